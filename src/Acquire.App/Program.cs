@@ -1,1 +1,3 @@
-System.Console.WriteLine("acquire");
+using Acquire.App.CommandLine;
+
+return await AcquireProgram.RunAsync(args, Terminal.OfProcess());
