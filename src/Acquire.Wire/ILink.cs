@@ -9,6 +9,15 @@ public interface ILink : IAsyncDisposable
     /// <summary>True between a successful open and the first failure or close.</summary>
     bool IsOpen { get; }
 
+    /// <summary>
+    /// True when closing and opening again gives a fresh stream on which no answer to an earlier question can arrive.
+    /// A socket does; a serial line does not, and the layer above must then resynchronise by a question.
+    /// </summary>
+    bool ReopenSeparates => false;
+
+    /// <summary>The clock that time-outs on this link run on: real time on a real wire, the device's clock in process.</summary>
+    TimeProvider TimeOutClock => TimeProvider.System;
+
     /// <summary>Opens the link. Throws <see cref="LinkException"/> with the reason and the remedy.</summary>
     ValueTask OpenAsync(CancellationToken cancellation);
 
