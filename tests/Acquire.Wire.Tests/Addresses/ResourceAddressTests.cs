@@ -1,3 +1,5 @@
+using CsCheck;
+
 namespace Acquire.Wire.Tests.Addresses;
 
 public class ResourceAddressTests
@@ -47,7 +49,7 @@ public class ResourceAddressTests
 
     [Fact]
     public void Parse_OfAnyText_GivesExactlyOneOfAddressAndProblem() =>
-        CsCheck.Check.Sample(CsCheck.Gen.OneOf(CsCheck.Gen.String, CsCheck.Gen.String.Select(s => "TCPIP::" + s), CsCheck.Gen.String.Select(s => "ASRL" + s + "::INSTR")), text =>
+        Check.Sample(Gen.OneOf(Gen.String, Gen.String.Select(s => "TCPIP::" + s), Gen.String.Select(s => "ASRL" + s + "::INSTR")), text =>
         {
             var parse = ResourceAddress.Parse(text);
             return parse.Address is null != parse.Problem is null;

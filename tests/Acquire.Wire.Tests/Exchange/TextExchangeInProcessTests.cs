@@ -1,4 +1,5 @@
 using Acquire.Testing;
+using CsCheck;
 
 namespace Acquire.Wire.Tests.Exchange;
 
@@ -92,7 +93,7 @@ public class TextExchangeInProcessTests
 
     [Fact]
     public void Ask_AnyBytesWithoutTerminatorByte_ComeBackUnchanged() =>
-        CsCheck.Check.Sample(CsCheck.Gen.Byte.Where(b => b is not ((byte)'\n' or (byte)'\r')).Array[0, 200], bytes => TestLoop.Run(async loop =>
+        Check.Sample(Gen.Byte.Where(b => b is not ((byte)'\n' or (byte)'\r')).Array[0, 200], bytes => TestLoop.Run(async loop =>
         {
             var text = System.Text.Encoding.Latin1.GetString(bytes);
             await using var exchange = Over(ScriptedDevice.AtOnce(_ => text), loop);
@@ -101,7 +102,7 @@ public class TextExchangeInProcessTests
 
     [Fact]
     public void Ask_AnySequenceOfDelays_EveryAnswerBelongsToItsQuestion() =>
-        CsCheck.Check.Sample(CsCheck.Gen.Int[0, 2500].Array[1, 12], delaysMs => TestLoop.Run(async loop =>
+        Check.Sample(Gen.Int[0, 2500].Array[1, 12], delaysMs => TestLoop.Run(async loop =>
         {
             var device = new ScriptedDevice { Answer = m => (m + "\n", TimeSpan.FromMilliseconds(delaysMs[int.Parse(m, System.Globalization.CultureInfo.InvariantCulture)])) };
             await using var exchange = Over(device, loop);

@@ -44,11 +44,15 @@ internal sealed partial class PseudoTerminal : IDisposable
     {
         var text = new StringBuilder();
         byte one = 0;
-        while (read(_master, ref one, 1) == 1)
+        try
         {
-            if (one == '\n') return text.ToString();
-            text.Append((char)one);
+            while (read(_master, ref one, 1) == 1)
+            {
+                if (one == '\n') return text.ToString();
+                text.Append((char)one);
+            }
         }
+        catch (ObjectDisposedException) { /* Unplugged between two reads. */ }
         return "";
     }
 
