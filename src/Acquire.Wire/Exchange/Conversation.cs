@@ -24,11 +24,10 @@ internal sealed class Conversation(ILink link, TextFraming framing, TimeProvider
     /// <summary>A question that may be asked at any time, and the answer that it always gets.</summary>
     public void Learn(string question, string answer) => (_knownQuestion, _knownAnswer) = (question, answer);
 
-    /// <summary>Ends what is in flight with <see cref="ReplyState.Aborted"/>.</summary>
+    /// <summary>Ends what is in flight with <see cref="ReplyState.Aborted"/>; the link then owes an answer and is cleaned when next used.</summary>
     public void Abort()
     {
         _aborted = true;
-        if (link.ReopenSeparates) link.Close();
         _deadline.Cancel();
     }
 

@@ -17,7 +17,7 @@ internal sealed class ExchangeDeadline(TimeProvider clock) : IDisposable
     public CancellationToken Token => _source.Token;
 
     public void Begin(TimeSpan timeOut, long startTicks, CancellationToken caller) =>
-        (_timeOut, _startTicks, _caller, _armed) = (timeOut, startTicks, caller, false);
+        (_timeOut, _startTicks, _caller) = (timeOut, startTicks, caller);
 
     public ValueTask<int> Within(ValueTask<int> pending)
     {

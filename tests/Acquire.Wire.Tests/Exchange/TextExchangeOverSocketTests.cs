@@ -37,8 +37,8 @@ public class TextExchangeOverSocketTests
     [Fact]
     public async Task Ask_AfterTimeOut_LateAnswerGoesToTheClosedConnection()
     {
-        var release = new TaskCompletionSource();
-        var lateSent = new TaskCompletionSource();
+        var release = new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
+        var lateSent = new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
         await using var instrument = new LoopbackInstrument(async (line, c) =>
         {
             if (line == "SLOW?")
@@ -78,7 +78,7 @@ public class TextExchangeOverSocketTests
     [Fact]
     public async Task Ask_ConnectionClosedBetweenExchanges_IsOpenedAgain()
     {
-        var closed = new TaskCompletionSource();
+        var closed = new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
         await using var instrument = new LoopbackInstrument(async (_, c) =>
         {
             await c.SendAsync("1\n");
@@ -136,10 +136,10 @@ public class TextExchangeOverSocketTests
     }
 
     [Fact]
-    public async Task Seize_WithExchangeInFlight_SendsOverANewConnection()
+    public void Seize_WithExchangeInFlight_SendsOverANewConnection() => TestLoop.RunReal(async () =>
     {
         var got = new List<string>();
-        var asked = new TaskCompletionSource();
+        var asked = new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
         await using var instrument = new LoopbackInstrument(async (line, c) =>
         {
             lock (got) got.Add(line);
@@ -156,5 +156,5 @@ public class TextExchangeOverSocketTests
         }
         Assert.Equal(ReplyState.Aborted, (await inFlight).State);
         Assert.Equal(["READ?", "OUTP 0", "OUTP?"], got);
-    }
+    });
 }

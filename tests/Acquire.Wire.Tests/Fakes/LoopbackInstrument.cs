@@ -29,8 +29,8 @@ internal sealed class LoopbackInstrument : IAsyncDisposable
     public async ValueTask DisposeAsync()
     {
         await _end.CancelAsync();
-        _listener.Stop();
         await _serving;
+        _listener.Stop();
         _end.Dispose();
     }
 

@@ -27,6 +27,16 @@ internal sealed class TestLoop : SynchronizationContext
         finally { SetSynchronizationContext(before); }
     }
 
+    /// <summary>Runs a test body on one thread in real time, as the engine does with real links.</summary>
+    public static void RunReal(Func<Task> body)
+    {
+        var before = Current;
+        using var loop = new RealLoop();
+        SetSynchronizationContext(loop);
+        try { loop.Pump(body()); }
+        finally { SetSynchronizationContext(before); }
+    }
+
     public override void Post(SendOrPostCallback d, object? state)
     {
         if (Environment.CurrentManagedThreadId != _threadId) throw new InvalidOperationException("A continuation left the loop's thread.");
@@ -34,6 +44,25 @@ internal sealed class TestLoop : SynchronizationContext
     }
 
     public override SynchronizationContext CreateCopy() => this;
+}
+
+/// <summary>A single-threaded loop in real time; continuations come from any thread and run on this one.</summary>
+internal sealed class RealLoop : SynchronizationContext, IDisposable
+{
+    private readonly System.Collections.Concurrent.BlockingCollection<(SendOrPostCallback Callback, object? State)> _ready = [];
+
+    public override void Post(SendOrPostCallback d, object? state) => _ready.Add((d, state));
+
+    public override SynchronizationContext CreateCopy() => this;
+
+    public void Pump(Task main)
+    {
+        main.ContinueWith(_ => _ready.CompleteAdding(), TaskScheduler.Default);
+        foreach (var work in _ready.GetConsumingEnumerable()) work.Callback(work.State);
+        main.GetAwaiter().GetResult();
+    }
+
+    public void Dispose() => _ready.Dispose();
 }
 
 /// <summary>A clock that stands still until it is told to jump.</summary>

@@ -126,7 +126,7 @@ public class SerialLinkTests
     }
 
     [Fact]
-    public async Task Seize_WithExchangeInFlight_EndsItAndResynchronises()
+    public void Seize_WithExchangeInFlight_EndsItAndResynchronises() => TestLoop.RunReal(async () =>
     {
         using var terminal = new PseudoTerminal();
         using var asked = new SemaphoreSlim(0);
@@ -149,7 +149,7 @@ public class SerialLinkTests
         Assert.Equal(ReplyState.Aborted, (await inFlight).State);
         // The order that makes safe is not held up by resynchronising.
         Assert.Equal(["READ?", "OUTP 0", "*IDN?", "OUTP?"], got);
-    }
+    });
 
     [Fact]
     public async Task Open_PortHeldBySomebodyElse_IsRefusedUntilReleased()
