@@ -1,4 +1,4 @@
-using System.Text.RegularExpressions;
+using Acquire.Bench.Text;
 using Acquire.Drivers.Replies;
 using Acquire.Wire;
 
@@ -13,11 +13,8 @@ public sealed record DriverFile
     /// <summary>The language it speaks, for people.</summary>
     public required string Speaks { get; init; }
 
-    /// <summary>The file as read, kept in every run.</summary>
-    public required string Text { get; init; }
-
-    /// <summary>Where it was read from.</summary>
-    public required string Path { get; init; }
+    /// <summary>The file and its exact text, kept in every run.</summary>
+    public required SourceText Source { get; init; }
 
     /// <summary>How messages are cut out of bytes.</summary>
     public required TextFraming Framing { get; init; }
@@ -42,12 +39,26 @@ public sealed record DriverFile
 
     /// <summary>What it can do as a lamp.</summary>
     public LampCommands? Lamp { get; init; }
-}
 
-/// <summary>A question and the form of the right answer.</summary>
-/// <param name="Ask">The question.</param>
-/// <param name="Expect">Matches the whole of a right answer.</param>
-public sealed record Check(string Ask, Regex Expect);
+    /// <summary>Reads a driver file.</summary>
+    public static Parsed<DriverFile> Read(string path)
+    {
+        var source = SourceText.Read(path);
+        return source.Value is null ? Parsed.Bad<DriverFile>(source.Diagnostics) : Parse(source.Value);
+    }
+
+    /// <summary>Parses the text of a driver file.</summary>
+    public static Parsed<DriverFile> Parse(SourceText source)
+    {
+        var document = YamlDocument.Parse(source);
+        if (document.Value is null) return Parsed.Bad<DriverFile>(document.Diagnostics);
+        var report = new ShapeReport(source.File);
+        DriverFileShape.Shape.Check(document.Value, report);
+        if (report.Diagnostics.Count > 0) return Parsed.Bad<DriverFile>(report.Diagnostics);
+        var driver = new DriverFileReading(source, (YamlMap)document.Value, report).Model();
+        return report.Diagnostics.Count > 0 ? Parsed.Bad<DriverFile>(report.Diagnostics) : Parsed.Good(driver);
+    }
+}
 
 /// <summary>One step of a make-safe: something sent, or something asked that must be answered as expected.</summary>
 /// <param name="Send">Sent as it is; null for a question.</param>
@@ -63,7 +74,7 @@ public sealed record Poll(string Ask, ReplyTemplate Reply, IReadOnlyList<FieldRe
 /// <summary>A command with a number in it.</summary>
 /// <param name="Send">The message; <c>{value}</c> is where the number goes.</param>
 /// <param name="Scale">The instrument's unit.</param>
-/// <param name="Decimals">Decimals of a number without exponent; null to send the shortest form that reads back exactly.</param>
+/// <param name="Decimals">Decimals of a number without exponent; null to send up to 12 significant digits, with an exponent where that is shorter.</param>
 public sealed record Setting(string Send, UnitScale Scale, int? Decimals);
 
 /// <summary>A command with two positions.</summary>

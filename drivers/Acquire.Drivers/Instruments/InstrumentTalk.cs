@@ -25,7 +25,7 @@ internal sealed class InstrumentTalk(string name, DriverFile driver, TextExchang
     {
         var reply = await exchange.AskAsync(driver.Identity.Ask, timeOut, cancellation);
         if (!reply.IsGood) return new Identification(false, null, $"{name}: {reply.Problem}");
-        if (!driver.Identity.Expect.IsMatch(reply.Text))
+        if (!driver.Identity.Matches(reply.Text))
             return new Identification(false, reply.Text, $"{name} ({Address}) is not what driver '{driver.Name}' expects: '{driver.Identity.Ask}' was answered '{reply.Text}'; expected something like {driver.Identity.Expect}. Correct the address or the driver in the bench file.");
         exchange.ResynchroniseBy(driver.Identity.Ask, reply.Text);
         foreach (var command in driver.Start)
@@ -45,7 +45,7 @@ internal sealed class InstrumentTalk(string name, DriverFile driver, TextExchang
         var value = setting.Scale.FromSI(siValue);
         var text = setting.Decimals is { } decimals
             ? value.ToString("F" + decimals.ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture)
-            : value.ToString("R", CultureInfo.InvariantCulture);
+            : value.ToString("G12", CultureInfo.InvariantCulture);
         return CommandAsync(setting.Send.Replace("{value}", text, StringComparison.Ordinal), cancellation);
     }
 
@@ -62,7 +62,7 @@ internal sealed class InstrumentTalk(string name, DriverFile driver, TextExchang
         }
         var reply = await exchange.SendThenAskAsync(command, errors.Ask, timeOut, cancellation);
         if (!reply.IsGood) return CommandOutcome.Failed($"{name}: whether '{command}' was taken is not known: {reply.Problem}");
-        if (errors.Expect.IsMatch(reply.Text)) return CommandOutcome.Ok;
+        if (errors.Matches(reply.Text)) return CommandOutcome.Ok;
         List<string> found = [reply.Text];
         await DrainErrorsAsync(errors, found, cancellation);
         return CommandOutcome.Failed($"{name} ({Address}) refused '{command}': it reports {string.Join("; ", found)}. Check the value against the instrument's limits and the driver '{driver.Name}'.");
@@ -106,7 +106,7 @@ internal sealed class InstrumentTalk(string name, DriverFile driver, TextExchang
         if (step.ReadBack is not { } check) return null;
         var reply = await seizure.AskAsync(check.Ask, timeOut, cancellation);
         if (!reply.IsGood) return reply.Problem;
-        return check.Expect.IsMatch(reply.Text) ? null : $"'{check.Ask}' was answered '{reply.Text}', expected {check.Expect}.";
+        return check.Matches(reply.Text) ? null : $"'{check.Ask}' was answered '{reply.Text}', expected {check.Expect}.";
     }
 
     private async ValueTask DrainErrorsAsync(Check errors, List<string> found, CancellationToken cancellation)
@@ -114,7 +114,7 @@ internal sealed class InstrumentTalk(string name, DriverFile driver, TextExchang
         for (var i = 0; i < MostErrors; i++)
         {
             var reply = await exchange.AskAsync(errors.Ask, timeOut, cancellation);
-            if (!reply.IsGood || errors.Expect.IsMatch(reply.Text)) return;
+            if (!reply.IsGood || errors.Matches(reply.Text)) return;
             found.Add(reply.Text);
         }
     }
