@@ -33,6 +33,17 @@ public static partial class CoreTypes
         };
     }
 
+    /// <summary>The number that a scalar stands for; null for texts, and for the infinities and not-a-number, which no file of ours needs.</summary>
+    public static double? NumberOf(YamlText text) => Of(text) switch
+    {
+        CoreType.WholeNumber when text.Value.StartsWith("0x", StringComparison.Ordinal) => Digits(text.Value[2..], 16),
+        CoreType.WholeNumber when text.Value.StartsWith("0o", StringComparison.Ordinal) => Digits(text.Value[2..], 8),
+        CoreType.WholeNumber or CoreType.Number => PlainNumber.Parse(text.Value),
+        _ => null,
+    };
+
+    private static double Digits(string digits, int radix) => digits.Aggregate(0.0, (sum, digit) => (sum * radix) + Convert.ToInt32(digit.ToString(), 16));
+
     [GeneratedRegex(@"^([-+]?[0-9]+|0o[0-7]+|0x[0-9a-fA-F]+)$")]
     private static partial Regex Whole();
 

@@ -15,10 +15,6 @@ public static partial class PlainNumber
             ? value
             : null;
 
-    /// <summary>Reads a whole number, or null.</summary>
-    public static int? ParseInteger(string text) =>
-        int.TryParse(text, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out var value) ? value : null;
-
     [GeneratedRegex("^" + Pattern + "$")]
     private static partial Regex Form();
 }

@@ -64,7 +64,7 @@ public sealed record NumberShape(string Description, double Least = double.MinVa
     public override void Check(YamlNode node, ShapeReport report)
     {
         var allowed = FormattableString.Invariant($"a {(Whole ? "whole " : "")}number from {Least} to {Most}");
-        var value = node is YamlText { Quoted: false } text ? Value(text) : null;
+        var value = node is YamlText text ? Value(text) : null;
         if (value is null)
         {
             report.Add(node.At, "a number without a unit is needed here", node is YamlText bare ? $"'{bare.Value}'" : node.Kind, allowed, "write the number alone");
@@ -95,7 +95,8 @@ public sealed record NumberShape(string Description, double Least = double.MinVa
     /// <inheritdoc/>
     protected override JsonNode ExampleValue() => JsonValue.Create(PlainNumber.Parse(Example) ?? 0);
 
-    private double? Value(YamlText text) => Whole ? PlainNumber.ParseInteger(text.Value) : PlainNumber.Parse(text.Value);
+    private double? Value(YamlText text) =>
+        CoreTypes.NumberOf(text) is { } number && (!Whole || number == Math.Floor(number)) ? number : null;
 }
 
 /// <summary>A text, optionally of a form given by a regular expression that JSON Schema and .NET read alike.</summary>

@@ -72,13 +72,13 @@ public sealed record YamlMap(Position At, IReadOnlyList<YamlEntry> Entries) : Ya
     public double QuantityOr(string key, Dimension dimension, double fallback) => Has(key) ? Quantity(key, dimension) : fallback;
 
     /// <summary>A whole number.</summary>
-    public int Integer(string key) => PlainNumber.ParseInteger(Text(key)) ?? throw new InvalidOperationException($"'{key}' passed no shape.");
+    public int Integer(string key) => (int)Number(key);
 
     /// <summary>A whole number, or the fallback when it is missing.</summary>
     public int IntegerOr(string key, int fallback) => Has(key) ? Integer(key) : fallback;
 
     /// <summary>A number without unit.</summary>
-    public double Number(string key) => PlainNumber.Parse(Text(key)) ?? throw new InvalidOperationException($"'{key}' passed no shape.");
+    public double Number(string key) => CoreTypes.NumberOf((YamlText)Need(key)) ?? throw new InvalidOperationException($"'{key}' passed no shape.");
 
     /// <summary>A number without unit, or the fallback when it is missing.</summary>
     public double NumberOr(string key, double fallback) => Has(key) ? Number(key) : fallback;
