@@ -13,6 +13,7 @@ internal sealed class ExchangeDeadline(TimeProvider clock) : IDisposable
     private TimeSpan _timeOut;
     private long _startTicks;
     private bool _armed;
+    private bool _disposed;
 
     public CancellationToken Token => _source.Token;
 
@@ -36,7 +37,7 @@ internal sealed class ExchangeDeadline(TimeProvider clock) : IDisposable
 
     public void End()
     {
-        if (!_armed && !_source.IsCancellationRequested) return;
+        if (_disposed || (!_armed && !_source.IsCancellationRequested)) return;
         _registration.Dispose();
         _registration = default;
         _armed = false;
@@ -46,8 +47,10 @@ internal sealed class ExchangeDeadline(TimeProvider clock) : IDisposable
         _source = new CancellationTokenSource(Timeout.InfiniteTimeSpan, clock);
     }
 
+    /// <summary>An exchange still in flight ends by its link being closed, and finds nothing to reset here.</summary>
     public void Dispose()
     {
+        _disposed = true;
         _registration.Dispose();
         _source.Dispose();
     }

@@ -50,7 +50,9 @@ internal sealed class ExchangeTurns(int longestQueue)
     {
         using var registration = cancellation.UnsafeRegister(
             static (state, token) => ((TaskCompletionSource<TurnOutcome>)state!).TrySetCanceled(token), place.Value);
-        return await place.Value.Task;
+        try { return await place.Value.Task; }
+        // One that gave up must not count against the bound of the queue.
+        finally { place.List?.Remove(place); }
     }
 }
 

@@ -183,6 +183,29 @@ public class TextExchangeInProcessTests
     });
 
     [Fact]
+    public void Ask_WaitersThatGaveUp_MakeRoomInTheQueue() => TestLoop.Run(async loop =>
+    {
+        await using var exchange = Over(new ScriptedDevice { Answer = m => (m + "\n", TimeSpan.FromMilliseconds(100)) }, loop, new TextFraming { LongestQueue = 1 });
+        var first = exchange.AskAsync("A?", Second, default).AsTask();
+        using var source = new CancellationTokenSource();
+        var second = exchange.AskAsync("B?", Second, source.Token).AsTask();
+        source.Cancel();
+        await Assert.ThrowsAnyAsync<OperationCanceledException>(() => second);
+        var third = exchange.AskAsync("C?", Second, default).AsTask();
+        Assert.Equal(("A?", "C?"), ((await first).Text, (await third).Text));
+    });
+
+    [Fact]
+    public void Dispose_WithExchangeInFlight_EndsItAsALinkFailure() => TestLoop.Run(async loop =>
+    {
+        var exchange = Over(new ScriptedDevice(), loop);
+        var inFlight = exchange.AskAsync("READ?", TimeSpan.FromHours(1), default).AsTask();
+        await exchange.DisposeAsync();
+        Assert.Equal(ReplyState.LinkFailed, (await inFlight).State);
+        Assert.Equal(0, loop.Clock.LiveTimers);
+    });
+
+    [Fact]
     public void Abort_EndsTheExchangeInFlight() => TestLoop.Run(async loop =>
     {
         await using var exchange = Over(new ScriptedDevice(), loop);

@@ -126,6 +126,16 @@ public class SerialLinkTests
     }
 
     [Fact]
+    public async Task Ask_AfterAMessageWasCutShort_EndsThatOneFirst()
+    {
+        using var terminal = new PseudoTerminal();
+        await using var exchange = Over(Link(terminal));
+        Assert.Equal(ReplyState.TimedOut, (await exchange.SendAsync(new string('x', 1_000_000), Short, default)).State);
+        Answering(terminal, line => line.StartsWith('x') ? null : line + "!\n");
+        Assert.Equal("A?!", (await exchange.AskAsync("A?", Long, default)).Text);
+    }
+
+    [Fact]
     public void Seize_WithExchangeInFlight_EndsItAndResynchronises() => TestLoop.RunReal(async () =>
     {
         using var terminal = new PseudoTerminal();
