@@ -17,8 +17,12 @@ internal sealed class ExchangeDeadline(TimeProvider clock) : IDisposable
 
     public CancellationToken Token => _source.Token;
 
-    public void Begin(TimeSpan timeOut, long startTicks, CancellationToken caller) =>
+    public void Begin(TimeSpan timeOut, long startTicks, CancellationToken caller)
+    {
+        // An abort that came between two exchanges was meant for the one before.
+        if (_source.IsCancellationRequested) End();
         (_timeOut, _startTicks, _caller) = (timeOut, startTicks, caller);
+    }
 
     public ValueTask<int> Within(ValueTask<int> pending)
     {

@@ -5,6 +5,7 @@ namespace Acquire.Wire;
 internal sealed class ExchangeTurns(int longestQueue)
 {
     private readonly LinkedList<TaskCompletionSource<TurnOutcome>> _waiting = new();
+    private readonly HashSet<TaskCompletionSource<TurnOutcome>> _firsts = [];
     private bool _taken;
 
     /// <summary>Takes the link, or waits for it.</summary>
@@ -20,15 +21,15 @@ internal sealed class ExchangeTurns(int longestQueue)
             : WaitAsync(_waiting.AddLast(Place()), cancellation);
     }
 
-    /// <summary>Sends away everybody who waits and takes the link as soon as its present user lets go.</summary>
+    /// <summary>Sends away everybody who waits, except those who came this way too, and takes the link after these.</summary>
     public ValueTask<TurnOutcome> EnterFirstAsync(CancellationToken cancellation)
     {
         if (!_taken) return EnterAsync(cancellation);
-        var first = new LinkedListNode<TaskCompletionSource<TurnOutcome>>(Place());
-        var sentAway = _waiting.ToArray();
-        _waiting.Clear();
-        _waiting.AddFirst(first);
-        foreach (var waiter in sentAway) waiter.TrySetResult(TurnOutcome.SentAway);
+        var sentAway = _waiting.Where(place => !_firsts.Contains(place)).ToArray();
+        foreach (var place in sentAway) _waiting.Remove(place);
+        var first = _waiting.AddLast(Place());
+        _firsts.Add(first.Value);
+        foreach (var place in sentAway) place.TrySetResult(TurnOutcome.SentAway);
         return WaitAsync(first, cancellation);
     }
 
@@ -37,6 +38,7 @@ internal sealed class ExchangeTurns(int longestQueue)
         while (_waiting.First is { } next)
         {
             _waiting.RemoveFirst();
+            _firsts.Remove(next.Value);
             // One that was cancelled meanwhile gives its turn on.
             if (next.Value.TrySetResult(TurnOutcome.Granted)) return;
         }
@@ -46,13 +48,17 @@ internal sealed class ExchangeTurns(int longestQueue)
     // Asynchronously: the next user starts from the loop, not from inside the one that let go.
     private static TaskCompletionSource<TurnOutcome> Place() => new(TaskCreationOptions.RunContinuationsAsynchronously);
 
-    private static async ValueTask<TurnOutcome> WaitAsync(LinkedListNode<TaskCompletionSource<TurnOutcome>> place, CancellationToken cancellation)
+    private async ValueTask<TurnOutcome> WaitAsync(LinkedListNode<TaskCompletionSource<TurnOutcome>> place, CancellationToken cancellation)
     {
         using var registration = cancellation.UnsafeRegister(
             static (state, token) => ((TaskCompletionSource<TurnOutcome>)state!).TrySetCanceled(token), place.Value);
         try { return await place.Value.Task; }
         // One that gave up must not count against the bound of the queue.
-        finally { place.List?.Remove(place); }
+        finally
+        {
+            place.List?.Remove(place);
+            _firsts.Remove(place.Value);
+        }
     }
 }
 

@@ -183,6 +183,29 @@ public class TextExchangeInProcessTests
     });
 
     [Fact]
+    public void Seize_ManyAtOnceWithExchangeInFlight_TakeTurnsAndEachIsWhole() => TestLoop.Run(async loop =>
+    {
+        var device = new ScriptedDevice { Answer = m => m == "READ?" ? (null, TimeSpan.Zero) : (m + "\n", TimeSpan.FromMilliseconds(5)) };
+        await using var exchange = Over(device, loop);
+        var inFlight = exchange.AskAsync("READ?", TimeSpan.FromHours(1), default).AsTask();
+        async Task<string> SafeAsync(int who)
+        {
+            using var seizure = await exchange.SeizeAsync(default);
+            var one = await seizure.AskAsync(FormattableString.Invariant($"{who}a"), Second, default);
+            var two = await seizure.AskAsync(FormattableString.Invariant($"{who}b"), Second, default);
+            return one.Text + two.Text;
+        }
+        var first = SafeAsync(1);
+        var second = SafeAsync(2);
+        await Task.Yield();
+        var third = SafeAsync(3);
+        var waiting = exchange.AskAsync("Z?", Second, default).AsTask();
+        Assert.Equal(["1a1b", "2a2b", "3a3b"], await Task.WhenAll(first, second, third));
+        Assert.Equal((ReplyState.Aborted, "Z?"), ((await inFlight).State, (await waiting).Text));
+        Assert.Equal(["READ?", "1a", "1b", "2a", "2b", "3a", "3b", "Z?"], device.Messages);
+    });
+
+    [Fact]
     public void Ask_WaitersThatGaveUp_MakeRoomInTheQueue() => TestLoop.Run(async loop =>
     {
         await using var exchange = Over(new ScriptedDevice { Answer = m => (m + "\n", TimeSpan.FromMilliseconds(100)) }, loop, new TextFraming { LongestQueue = 1 });
