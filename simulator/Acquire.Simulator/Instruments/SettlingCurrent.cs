@@ -1,3 +1,5 @@
+using Acquire.Simulator.Thermal;
+
 namespace Acquire.Simulator.Instruments;
 
 /// <summary>A current on its way to a steady value, first order and exact for any interval.</summary>
@@ -16,5 +18,5 @@ internal sealed class SettlingCurrent
 
     /// <summary>The mean over the coming interval [A].</summary>
     public double MeanOver(double intervalS, double steadyA, double timeConstantS) =>
-        steadyA - ((_valueA - steadyA) * timeConstantS / intervalS * double.ExpM1(-intervalS / timeConstantS));
+        steadyA + ((_valueA - steadyA) * timeConstantS / intervalS * Relaxation.Gone(intervalS / timeConstantS));
 }

@@ -1,5 +1,6 @@
 using Acquire.Simulator.Noise;
 using Acquire.Simulator.Scpi;
+using Acquire.Simulator.Thermal;
 
 namespace Acquire.Simulator.Instruments;
 
@@ -33,7 +34,7 @@ internal sealed class SimulatedLamp(LampModel model, SeededNoise noise)
     public void Step(double nowS, double stepS)
     {
         var driven = _isOn ? _driveA / model.RatedDriveA : 0;
-        _warmth += (driven - _warmth) * -double.ExpM1(-stepS / model.WarmUpTimeS);
+        _warmth += (driven - _warmth) * Relaxation.Gone(stepS / model.WarmUpTimeS);
         IrradianceWPerM2 = driven <= 0 ? 0
             : model.IrradianceAtRatedWPerM2 * Math.Pow(driven, model.DriveExponent)
               * Math.Max(0, 1 - (model.WarmUpLoss * _warmth)) * (1 + (model.Drift * _drift.At(nowS)));

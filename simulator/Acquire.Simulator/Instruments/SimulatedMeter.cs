@@ -101,7 +101,7 @@ internal sealed class SimulatedMeter
         var readA = meanA + NoiseA(meanA, startS, integrationS) + PickUpA(startS, integrationS) + GlitchA(startS);
         var overload = Math.Abs(readA) > _settings.RangeA * MeterSettings.Headroom;
         var stepA = _settings.RangeA * _model.Resolution;
-        call.Reply(overload ? Overload : Math.Round(readA / stepA) * stepA);
+        call.Reply(overload ? Overload : Math.Round(readA / stepA) * stepA, "E8");
         call.Reply(VoltageV(inCompliance, integrationS));
         call.Reply((inCompliance ? 1 : 0) | (overload ? 2 : 0));
         call.Take(2 * integrationS);

@@ -1,3 +1,5 @@
+using Acquire.Simulator.Thermal;
+
 namespace Acquire.Simulator.Samples;
 
 /// <summary>Excess carriers under light, and what stays in traps after it.</summary>
@@ -31,7 +33,7 @@ internal sealed class ExcessCarriers(PhotoModel model, double thicknessM)
     /// <summary>Pairs made per volume and time [m-3 s-1].</summary>
     public double GenerationPerM3S(double irradianceWPerM2, double wavelengthM) =>
         (1 - model.Reflectance) * irradianceWPerM2 * wavelengthM / PlanckTimesLightJM
-        * -double.ExpM1(-thicknessM / model.AbsorptionLengthM) / thicknessM;
+        * Relaxation.Gone(thicknessM / model.AbsorptionLengthM) / thicknessM;
 
     /// <summary>Lets time pass under constant light.</summary>
     public void Step(double irradianceWPerM2, double wavelengthM, double temperatureK, double stepS)
@@ -44,7 +46,7 @@ internal sealed class ExcessCarriers(PhotoModel model, double thicknessM)
         }
         var captureHz = PairsPerM3 / model.CapturePerM3;
         var rateHz = captureHz + EmissionHz(temperatureK);
-        Filling += ((captureHz / rateHz) - Filling) * -double.ExpM1(-rateHz * stepS);
+        Filling += ((captureHz / rateHz) - Filling) * Relaxation.Gone(rateHz * stepS);
     }
 
     /// <summary>How often a filled trap lets go [1/s].</summary>

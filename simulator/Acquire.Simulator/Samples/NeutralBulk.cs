@@ -9,7 +9,7 @@ namespace Acquire.Simulator.Samples;
 /// </remarks>
 internal sealed class NeutralBulk : IBulk
 {
-    private const double GridK = 2;
+    private const double GridK = 1;
     private readonly SampleModel _model;
     private readonly Material _material;
     private readonly Dictionary<int, (double LnElectrons, double LnHoles)> _nodes = [];

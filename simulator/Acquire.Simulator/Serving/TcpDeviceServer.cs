@@ -25,8 +25,6 @@ public sealed class TcpDeviceServer : IDeviceServer
     {
         _port = port;
         _clock = clock;
-        // A port that was just in use may be taken again at once.
-        if (!OperatingSystem.IsWindows()) _listener.SetSocketOption(SocketOptionLevel.Socket, SocketOptionName.ReuseAddress, true);
         _listener.Bind(new IPEndPoint(IPAddress.Loopback, tcpPort));
         _listener.Listen(WaitingClients);
         TcpPort = ((IPEndPoint)_listener.LocalEndPoint!).Port;

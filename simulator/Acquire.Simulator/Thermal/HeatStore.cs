@@ -18,12 +18,13 @@ public sealed record HeatStore(double At300JPerK, double EinsteinK)
     /// <summary>Heat stored between absolute zero and a temperature [J]; the integral of the heat capacity in closed form.</summary>
     public double HeatJ(double temperatureK) => EinsteinK == 0
         ? _highTemperatureJPerK * temperatureK
-        : _highTemperatureJPerK * EinsteinK / (Math.Exp(EinsteinK / temperatureK) - 1);
+        : _highTemperatureJPerK * EinsteinK * Math.Exp(-EinsteinK / temperatureK) / Relaxation.Gone(EinsteinK / temperatureK);
 
     private static double Shape(double x)
     {
         if (x == 0) return 1;
-        var e = Math.Exp(-x);
-        return x * x * e / ((1 - e) * (1 - e));
+        // The same function, written so that it keeps its digits for small x.
+        var root = x / 2 / Math.Sinh(x / 2);
+        return root * root;
     }
 }

@@ -140,7 +140,7 @@ public sealed class SimulatedMeterTests
         Prepare(talk, "SENS:CURR:RANG:AUTO ON;:SOUR:VOLT 1E-6");
         talk.Read();
         var low = talk.Numbers("meter", "SENS:CURR:RANG?")[0];
-        talk.Tell("meter", "SOUR:VOLT 0.5");
+        talk.Tell("meter", "SOUR:VOLT 1");
         talk.Wait(1);
         talk.Read();
         var high = talk.Numbers("meter", "SENS:CURR:RANG?")[0];
