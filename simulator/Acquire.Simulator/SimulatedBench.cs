@@ -44,10 +44,14 @@ public sealed class SimulatedBench
     /// <summary>The instruments that can be spoken to.</summary>
     public IReadOnlyCollection<string> InstrumentNames => _ports.Keys;
 
-    /// <summary>Reads the twin file that a bench file names, and builds the bench from it.</summary>
+    /// <summary>True when the bench named no twin and one was made up from its ratings; whoever shows results says so.</summary>
+    public bool IsTwinMadeUp { get; private init; }
+
+    /// <summary>Reads the twin file that a bench file names, or makes up a twin where it names none, and builds the bench from it.</summary>
     public static Parsed<SimulatedBench> Open(BenchFile bench, ulong seed, TimeProvider clock)
     {
         ArgumentNullException.ThrowIfNull(bench);
+        if (bench.TwinFile is null) return Parsed.Good(new SimulatedBench(bench, DefaultTwin.For(bench), seed, clock) { IsTwinMadeUp = true });
         var twin = TwinFile.Beside(bench);
         return twin.Value is null ? Parsed.Bad<SimulatedBench>(twin.Diagnostics) : Parsed.Good(new SimulatedBench(bench, twin.Value.Model, seed, clock));
     }

@@ -20,6 +20,8 @@ internal sealed class DeviceTalk
         Bench = new SimulatedBench(ShippedBenches.Bench(bench), change?.Invoke(twin) ?? twin, seed, Time.Clock);
     }
 
+    public DeviceTalk(SimulatedBench bench, VirtualTime time) => (Bench, Time) = (bench, time);
+
     public VirtualTime Time { get; }
 
     public SimulatedBench Bench { get; }
