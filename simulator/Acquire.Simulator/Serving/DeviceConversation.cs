@@ -13,7 +13,7 @@ internal sealed class DeviceConversation(IDevicePort port, TimeProvider clock)
     {
         _reply.ResetWrittenCount();
         var delay = port.Receive(bytes, _reply);
-        if (_reply.WrittenCount > 0 && delay > TimeSpan.Zero) Task.Delay(delay, clock, stop).Wait(stop);
+        if (_reply.WrittenCount > 0 && delay > TimeSpan.Zero) Task.Delay(delay, clock, stop).GetAwaiter().GetResult();
         return _reply.WrittenMemory;
     }
 }

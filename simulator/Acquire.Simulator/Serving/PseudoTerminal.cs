@@ -16,8 +16,13 @@ internal sealed partial class PseudoTerminal : IDisposable
     private const short Readable = 1;
     private const int Interrupted = 4;
 
+    private const int WouldBlock = 11;
+
     // O_NOCTTY, and on Linux O_CLOEXEC: a child of ours must not keep the line alive.
     private static readonly int NoControllingTerminal = OperatingSystem.IsMacOS() ? 0x20000 : 0x100 | 0x80000;
+
+    // O_NONBLOCK; macOS takes no such flag here, and a write there waits for its reader.
+    private static readonly int NeverWait = OperatingSystem.IsMacOS() ? 0 : 0x800;
     private readonly int[] _wake = new int[2];
     private readonly int _master;
     private readonly int _slave;
@@ -25,7 +30,7 @@ internal sealed partial class PseudoTerminal : IDisposable
 
     public PseudoTerminal()
     {
-        _master = Check(OpenMaster(ReadWrite | NoControllingTerminal), "posix_openpt");
+        _master = Check(OpenMaster(ReadWrite | NoControllingTerminal | NeverWait), "posix_openpt");
         Check(Grant(_master), "grantpt");
         Check(Unlock(_master), "unlockpt");
         Path = SlavePath(_master);
@@ -37,7 +42,7 @@ internal sealed partial class PseudoTerminal : IDisposable
     /// <summary>Path of the slave, which a client opens.</summary>
     public string Path { get; }
 
-    /// <summary>Waits for bytes from the client; 0 when woken by <see cref="Wake"/>.</summary>
+    /// <summary>Waits for bytes from the client; 0 when woken by <see cref="Wake"/>, or by nothing.</summary>
     public int Read(byte[] buffer)
     {
         Span<PollEntry> entries = [new PollEntry { File = _master, Wanted = Readable }, new PollEntry { File = _wake[0], Wanted = Readable }];
@@ -47,17 +52,20 @@ internal sealed partial class PseudoTerminal : IDisposable
         }
         if (entries[1].Found != 0) return 0;
         var count = ReadFile(_master, buffer, buffer.Length);
+        if (count < 0 && Marshal.GetLastPInvokeError() is WouldBlock or Interrupted) return 0;
         return count >= 0 ? (int)count : throw Failed("read");
     }
 
-    /// <summary>Writes all bytes to the client; gives up when the client's buffer is full and nobody reads.</summary>
+    /// <summary>Writes bytes to the client; like on a wire without handshake, what finds the client's buffer full is lost.</summary>
     public void Write(ReadOnlySpan<byte> bytes)
     {
         while (bytes.Length > 0)
         {
             var count = WriteFile(_master, bytes, bytes.Length);
-            if (count < 0 && Marshal.GetLastPInvokeError() == Interrupted) continue;
-            if (count < 0) throw Failed("write");
+            var error = count < 0 ? Marshal.GetLastPInvokeError() : 0;
+            if (error == Interrupted) continue;
+            if (error == WouldBlock) return;
+            if (error != 0) throw Failed("write");
             bytes = bytes[(int)count..];
         }
     }

@@ -12,6 +12,9 @@ namespace Acquire.Simulator.Serving;
 public sealed class TcpDeviceServer : IDeviceServer
 {
     private const int WaitingClients = 4;
+
+    // A listener that fails again and again is dead; going on would only burn the processor.
+    private const int MostFailuresInARow = 100;
     private static readonly TimeSpan LongestStop = TimeSpan.FromSeconds(10);
     private readonly IDevicePort _port;
     private readonly TimeProvider _clock;
@@ -68,16 +71,19 @@ public sealed class TcpDeviceServer : IDeviceServer
 
     private void Serve()
     {
-        while (!_stop.IsCancellationRequested)
+        var failuresInARow = 0;
+        while (!_stop.IsCancellationRequested && failuresInARow < MostFailuresInARow)
         {
             try
             {
                 using var client = _listener.Accept();
+                failuresInARow = 0;
                 Converse(client);
             }
             catch (Exception problem) when (problem is SocketException or ObjectDisposedException or OperationCanceledException)
             {
                 // The client broke off, or the server is being stopped: the condition of the loop tells which.
+                failuresInARow++;
             }
         }
     }

@@ -8,7 +8,7 @@ namespace Acquire.Simulator.Twins;
 /// <param name="Model">What it says.</param>
 public sealed record TwinFile(SourceText Source, TwinModel Model)
 {
-    /// <summary>Reads the twin file that a bench file names, relative to it.</summary>
+    /// <summary>Reads the twin file that a bench file names: beside it, or else the shipped one of that name.</summary>
     public static Parsed<TwinFile> Beside(BenchFile bench)
     {
         ArgumentNullException.ThrowIfNull(bench);
@@ -18,6 +18,7 @@ public sealed record TwinFile(SourceText Source, TwinModel Model)
                 "", "", "add 'twin: name.twin.yaml'")]);
         }
         var source = SourceText.Read(Path.Combine(Path.GetDirectoryName(bench.Source.File) ?? "", bench.TwinFile));
+        if (source.Value is null && ShippedBenchFiles.Find(bench.TwinFile) is { } shipped) source = Parsed.Good(shipped);
         if (source.Value is null) return Parsed.Bad<TwinFile>(source.Diagnostics);
         var twin = Parse(source.Value);
         return twin.Value is null ? twin : AgreesWith(bench, twin.Value);

@@ -86,6 +86,48 @@ public sealed class DeviceServerTests
     }
 
     [Fact]
+    public async Task Pty_ClientThatNeverReads_DoesNotHoldUpTheServer()
+    {
+        if (!OperatingSystem.IsLinux()) Assert.Skip("Only Linux gives a pseudo-terminal that never waits.");
+        else
+        {
+            using var server = PseudoTerminalServer.Start(Port("meter"), TimeProvider.System);
+            await using (var link = new LinkFactory().Create(server.Address, new LinkSettings()))
+            {
+                await link.OpenAsync(CancellationToken.None);
+                for (var i = 0; i < 2000; i++) await link.WriteAsync("*IDN?\n"u8.ToArray(), CancellationToken.None);
+            }
+            server.Dispose();
+            Assert.False(File.Exists(server.Path));
+        }
+    }
+
+    [Fact]
+    public void Tcp_StoppedWhileTheDeviceIsBusy_EndsAtOnce()
+    {
+        var clock = new Acquire.Simulator.Time.VirtualTime(DateTimeOffset.UnixEpoch).Clock;
+        var server = TcpDeviceServer.Start(Port("meter"), clock);
+        using var client = Connect(server);
+        client.Send("READ?\n"u8);
+        // The device waits on a clock that stands still: only the stop can end it, and then the client sees the end of the line.
+        server.Dispose();
+        Assert.Equal(0, ReceiveOrEnd(client));
+    }
+
+    // A stop that comes before the server has read what was sent ends the connection with a reset.
+    private static int ReceiveOrEnd(Socket client)
+    {
+        try
+        {
+            return client.Receive(new byte[16]);
+        }
+        catch (SocketException problem) when (problem.SocketErrorCode == SocketError.ConnectionReset)
+        {
+            return 0;
+        }
+    }
+
+    [Fact]
     public void Pty_Stopped_TakesItsTerminalAway()
     {
         if (!OperatingSystem.IsLinux() && !OperatingSystem.IsMacOS()) Assert.Skip("This system has no pseudo-terminals.");
