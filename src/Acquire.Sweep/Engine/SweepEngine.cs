@@ -1,0 +1,179 @@
+using Acquire.Runs.Records;
+using Acquire.Sweep.Measuring;
+
+namespace Acquire.Sweep.Engine;
+
+/// <summary>What an operator may ask of a running engine. Called on the loop.</summary>
+public interface IEngineCommands
+{
+    /// <summary>Makes the bench safe at once; the run ends.</summary>
+    string MakeSafe(string operatorName, string? reason);
+
+    /// <summary>Ends the run safely.</summary>
+    string Stop(string operatorName, string? reason);
+
+    /// <summary>Keeps the temperature and pauses the sequence before its next step.</summary>
+    string Hold(string operatorName, string? reason);
+
+    /// <summary>Goes on after a hold.</summary>
+    string Continue(string operatorName, string? reason);
+}
+
+/// <summary>The engine: one monitor loop, one sequence, one recorder, and one object that may energise.</summary>
+public sealed class SweepEngine : IEngineCommands, IDisposable
+{
+    private readonly EngineSetup _setup;
+    private readonly RunLog _log;
+    private readonly BenchMonitor _monitor;
+    private readonly OutputAuthority _outputs;
+    private readonly Sequence _sequence;
+    private readonly SequencePlace _place = new();
+    private readonly CancellationTokenSource _sequenceEnd = new();
+    private string _state = "starting";
+    private string? _stopReason;
+    private TaskCompletionSource? _hold;
+
+    public SweepEngine(EngineSetup setup)
+    {
+        _setup = setup;
+        _log = new RunLog(setup.Recorder, setup.Loop.Clock, setup.OriginTimestamp, setup.Log);
+        _monitor = new BenchMonitor(setup, _log);
+        _outputs = new OutputAuthority(setup.Instruments, setup.Bench.Limits, _monitor.WhyNot, _log, setup.LinkClock);
+        _sequence = new Sequence(setup, _log, _outputs, _monitor, _place) { HoldAsync = WaitWhileHeldAsync };
+        _monitor.Tripped = trips => EndSequence(null);
+    }
+
+    /// <summary>Runs the plan to its end, whatever that is; the bench is safe and the record sealed when it returns.</summary>
+    public async Task<RunOutcome> RunAsync(CancellationToken cancellation)
+    {
+        _log.Event("state", Severity.Note, "engine", "The run starts.", $"{{\"interlocks\":\"{_setup.Interlocks.Sha256()}\"}}");
+        _state = "running";
+        using var stopped = cancellation.Register(() => _setup.Loop.Post(_ => Stop("the system", "it asked the program to end"), null));
+        using var monitorEnd = new CancellationTokenSource();
+        var monitoring = _monitor.RunAsync(monitorEnd.Token);
+        var outcome = await SequenceAsync();
+        _state = "ending";
+        (_place.Phase, _place.Waiting) = ("safe", "");
+        var safe = await _outputs.MakeSafeAsync(outcome.State == "completed" ? "the plan is done" : outcome.Reason);
+        await _monitor.NextTickAsync(CancellationToken.None); // one more look at the bench after it was made safe
+        monitorEnd.Cancel(); // not CancelAsync, which passes through the thread pool
+        await monitoring;
+        if (!safe && outcome.State == "completed")
+        {
+            outcome = new("failed", "The plan is done, but not every instrument confirmed that it is off. Check the bench by hand.");
+        }
+
+        _log.Event("state", outcome.State == "completed" ? Severity.Note : Severity.Warning, "engine", $"The run ends: {outcome.State}. {outcome.Reason}");
+        await _setup.Recorder.SealAsync(outcome.State, CancellationToken.None);
+        _state = "ended: " + outcome.State;
+        return outcome;
+    }
+
+    /// <summary>Where the run is now.</summary>
+    public EngineStatus Status() => new()
+    {
+        State = _hold is null ? _state : "holding",
+        Phase = _place.Phase,
+        Leg = _place.Step?.Leg ?? 0,
+        Legs = _setup.Plan.Steps.Max(step => step.Leg),
+        Point = _place.Points,
+        Points = _setup.Plan.Points,
+        StageK = _monitor.Last.StageK,
+        SampleK = _monitor.Last.SampleK,
+        TargetK = _place.TargetK,
+        TimeLeftS = _setup.Plan.Steps.Skip(_place.Step?.Index ?? 0).Sum(step => step.EstimateS),
+        Committed = _log.Health.Committed,
+        Waiting = _place.Waiting,
+    };
+
+    /// <inheritdoc/>
+    public string MakeSafe(string operatorName, string? reason)
+    {
+        Command("make safe", operatorName, reason);
+        var because = $"{operatorName} pressed make safe{(reason is null ? "" : ": " + reason)}";
+        _ = _outputs.MakeSafeAsync(because); // recorded by itself; the end of the run waits for the same task
+        EndSequence(because);
+        return "Heater off, bias 0 and light off are on their way; the run ends.";
+    }
+
+    /// <inheritdoc/>
+    public string Stop(string operatorName, string? reason)
+    {
+        Command("stop", operatorName, reason);
+        EndSequence($"{operatorName} stopped the run{(reason is null ? "" : ": " + reason)}");
+        return "The run ends safely: heater off, bias 0, light off.";
+    }
+
+    /// <inheritdoc/>
+    public string Hold(string operatorName, string? reason)
+    {
+        Command("hold", operatorName, reason);
+        _hold ??= new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
+        return "The sequence pauses before its next step; the temperature is kept.";
+    }
+
+    /// <inheritdoc/>
+    public string Continue(string operatorName, string? reason)
+    {
+        Command("continue", operatorName, reason);
+        if (_hold is not { } held)
+        {
+            return "Nothing was held.";
+        }
+
+        _hold = null;
+        held.TrySetResult();
+        return "The sequence goes on.";
+    }
+
+    /// <inheritdoc/>
+    public void Dispose() => _sequenceEnd.Dispose();
+
+    private async Task<RunOutcome> SequenceAsync()
+    {
+        try
+        {
+            var early = await _sequence.RunAsync(_sequenceEnd.Token);
+            return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text)
+                : early is not null ? new("stopped", early)
+                : _stopReason is { } stopped ? new("stopped", stopped) : new("completed", "Every step of the plan was done.");
+        }
+        catch (OperationCanceledException)
+        {
+            return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text) : new("stopped", _stopReason ?? "the sequence was cancelled");
+        }
+        catch (StepFailedException failure)
+        {
+            // A command that a trip refused is the trip's doing.
+            return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text)
+                : _stopReason is { } stopped ? new("stopped", stopped) : new("failed", failure.Message);
+        }
+    }
+
+    private void EndSequence(string? reason)
+    {
+        _stopReason ??= reason;
+        if (_monitor.Interlocks.FirstOut is { } trip)
+        {
+            _ = _outputs.MakeSafeAsync(trip.Text); // recorded by itself; the end of the run waits for the same task
+        }
+
+        _sequenceEnd.Cancel();
+        _hold?.TrySetResult();
+        _hold = null;
+    }
+
+    private void Command(string verb, string operatorName, string? reason) =>
+        _log.Event("operator", Severity.Note, operatorName, $"{operatorName}: {verb}{(reason is null ? "" : " (" + reason + ")")}.");
+
+    private async Task WaitWhileHeldAsync(CancellationToken cancellation)
+    {
+        if (_hold is { } held)
+        {
+            _place.Waiting = "held by an operator";
+            await held.Task;
+            _place.Waiting = "";
+            cancellation.ThrowIfCancellationRequested();
+        }
+    }
+}
