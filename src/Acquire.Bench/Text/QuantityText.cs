@@ -42,7 +42,10 @@ public static class QuantityText
     {
         var unit = UnitsOf(dimension).First(candidate => symbol is null || candidate.Symbol == symbol);
         var value = (si - unit.Offset) / unit.Factor;
-        return string.Create(CultureInfo.InvariantCulture, $"{value:R} {unit.Symbol}");
+        // Twelve digits read better than seventeen; they are used when they give the very same number back.
+        var plain = value.ToString("G12", CultureInfo.InvariantCulture);
+        var same = unit.Offset + (unit.Factor * double.Parse(plain, CultureInfo.InvariantCulture)) == si;
+        return same ? $"{plain} {unit.Symbol}" : string.Create(CultureInfo.InvariantCulture, $"{value:R} {unit.Symbol}");
     }
 
     /// <summary>The units of a dimension, for messages.</summary>
