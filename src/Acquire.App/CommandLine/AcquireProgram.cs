@@ -1,4 +1,9 @@
 using System.CommandLine;
+using Acquire.App.Checking;
+using Acquire.App.Fitting;
+using Acquire.App.Planning;
+using Acquire.App.Records;
+using Acquire.App.Running;
 
 namespace Acquire.App.CommandLine;
 
@@ -45,6 +50,18 @@ internal static class AcquireProgram
         var root = new RootCommand(
             "Runs a semiconductor bench through a temperature sweep, in the dark and under light, keeps it safe, loses no reading, "
             + "and turns the record into an activation energy that can be signed.");
+        root.Add(CheckCommand.Build(terminal));
+        root.Add(PlanCommand.Build(terminal));
+        root.Add(RehearseCommand.Build(terminal));
+        root.Add(RunCommand.Build(terminal));
+        root.Add(RunCommand.BuildEngine(terminal));
+        root.Add(TellCommand.Build(terminal));
+        root.Add(SimulateCommand.Build(terminal));
+        root.Add(RunsCommand.Build(terminal));
+        root.Add(FitCommand.Build(terminal));
+        root.Add(ReportCommand.Build(terminal));
+        root.Add(ImportCommand.Build(terminal));
+        root.Add(VerifyCommand.Build(terminal));
         return root;
     }
 }
