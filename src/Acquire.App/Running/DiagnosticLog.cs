@@ -1,5 +1,4 @@
 using Acquire.App.Files;
-using Microsoft.Extensions.Logging;
 using Serilog;
 using Serilog.Extensions.Logging;
 using Serilog.Formatting.Compact;

@@ -2,7 +2,6 @@ using System.CommandLine;
 using System.Diagnostics;
 using Acquire.App.Checking;
 using Acquire.App.CommandLine;
-using Acquire.App.Fitting;
 using Acquire.App.Planning;
 using Acquire.Runs;
 using Acquire.Simulator;
