@@ -1,5 +1,6 @@
 using System.Collections.Immutable;
 using System.Globalization;
+using System.Numerics;
 
 namespace Acquire.Interlocks;
 
@@ -10,21 +11,30 @@ public static class InterlockDecision
     /// Judges every row. The result is the new memory and the trips that are new with this evaluation; make the bench safe when there is one.
     /// The same object comes back when nothing changed, so that a quiet tick allocates nothing.
     /// </summary>
-    public static (InterlockState State, ImmutableArray<Trip> New) Decide(InterlockTable table, InterlockState state, in InterlockSnapshot snapshot, double nowS)
+    /// <param name="table">The rows.</param>
+    /// <param name="state">What was remembered.</param>
+    /// <param name="snapshot">What is known now.</param>
+    /// <param name="nowS">Now [s], monotonic.</param>
+    /// <param name="newSample">
+    /// True when the sensors were polled since the last evaluation: rows that need confirmation count samples, not evaluations, so that judging
+    /// a command twice confirms nothing. They trip on the given number out of the last three samples.
+    /// </param>
+    public static (InterlockState State, ImmutableArray<Trip> New) Decide(
+        InterlockTable table, InterlockState state, in InterlockSnapshot snapshot, double nowS, bool newSample = true)
     {
         ImmutableArray<int>.Builder? counts = null;
         ImmutableArray<Trip>.Builder? trips = null;
         for (var i = 0; i < table.Rows.Count; i++)
         {
             var row = table.Rows[i];
-            var count = IsHealthy(table, row, snapshot, nowS) ? 0 : Math.Min(state.Unhealthy[i] + 1, row.Confirmations);
-            if (count != state.Unhealthy[i])
+            var samples = Samples(row, state.Unhealthy[i], IsHealthy(table, row, snapshot, nowS), newSample);
+            if (samples != state.Unhealthy[i])
             {
                 counts ??= state.Unhealthy.ToBuilder();
-                counts[i] = count;
+                counts[i] = samples;
             }
 
-            if (count >= row.Confirmations && !state.Trips.Any(trip => trip.RowId == row.Id))
+            if (BitOperations.PopCount((uint)samples) >= row.Confirmations && !HasTripped(state, row))
             {
                 trips ??= ImmutableArray.CreateBuilder<Trip>();
                 trips.Add(new(row.Id, nowS, Sentence(row, snapshot, nowS)));
@@ -38,6 +48,26 @@ public static class InterlockDecision
 
         var fresh = trips?.ToImmutable() ?? [];
         return (new(counts?.ToImmutable() ?? state.Unhealthy, state.Trips.AddRange(fresh)), fresh);
+    }
+
+    /// <summary>The last three samples of a row as bits, unhealthy ones set; a row without confirmation has one bit, judged every time.</summary>
+    private static int Samples(InterlockRow row, int before, bool healthy, bool newSample)
+    {
+        var now = healthy ? 0 : 1;
+        return row.Confirmations == 1 ? now : newSample ? ((before << 1) | now) & 0b111 : before;
+    }
+
+    private static bool HasTripped(InterlockState state, InterlockRow row)
+    {
+        foreach (var trip in state.Trips)
+        {
+            if (trip.RowId == row.Id)
+            {
+                return true;
+            }
+        }
+
+        return false;
     }
 
     private static bool IsHealthy(InterlockTable table, InterlockRow row, in InterlockSnapshot snapshot, double nowS) => row.Condition switch

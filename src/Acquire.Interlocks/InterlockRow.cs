@@ -47,7 +47,7 @@ public enum InterlockCondition
 /// <param name="Condition">What must be true.</param>
 /// <param name="Threshold">Its threshold, in <paramref name="Unit"/>.</param>
 /// <param name="Unit">K, s, or empty.</param>
-/// <param name="Confirmations">Evaluations in a row that must be unhealthy before it trips.</param>
+/// <param name="Confirmations">1: judged every time; 2: unhealthy samples among the last three before it trips.</param>
 /// <param name="Consequence">What happens to people or samples if nothing acts.</param>
 /// <param name="Text">What the operator is told; {0} is what was found, {1} the threshold.</param>
 /// <param name="HowToTest">How the row is tested on a bench.</param>

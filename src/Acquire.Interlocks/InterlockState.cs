@@ -9,7 +9,7 @@ namespace Acquire.Interlocks;
 public sealed record Trip(string RowId, double AtS, string Text);
 
 /// <summary>What the interlocks remember between evaluations.</summary>
-/// <param name="Unhealthy">For each row, how many evaluations in a row it has been unhealthy.</param>
+/// <param name="Unhealthy">For each row, its last three samples as bits, the unhealthy ones set.</param>
 /// <param name="Trips">Rows that tripped, the first cause first; they stay until a person resets, and nothing resets within a run in this version.</param>
 public sealed record InterlockState(ImmutableArray<int> Unhealthy, ImmutableArray<Trip> Trips)
 {

@@ -11,9 +11,13 @@ public sealed record InterlockTable(int Version, IReadOnlyList<InterlockRow> Row
     private const int PresentVersion = 1;
 
     /// <summary>The built-in rows with the thresholds of a bench. Rows of instruments that are not wired are not there: they are not protected, never healthy.</summary>
-    public static InterlockTable For(BenchFile bench)
+    /// <param name="bench">The bench.</param>
+    /// <param name="pace">
+    /// How many times faster than life the bench's clock runs: links, processors and operating systems are not faster, so ages are allowed in real time.
+    /// </param>
+    public static InterlockTable For(BenchFile bench, double pace = 1)
     {
-        var staleS = Math.Max(3 * bench.MonitorPeriodS, 5);
+        var staleS = pace * Math.Max(3 * bench.MonitorPeriodS / pace, 5);
         var rows = new List<InterlockRow>();
         foreach (var (input, words) in new[] { (InterlockInput.Stage, "stage"), (InterlockInput.Sample, "sample") })
         {
@@ -26,11 +30,11 @@ public sealed record InterlockTable(int Version, IReadOnlyList<InterlockRow> Row
                 $"The last good {words} temperature is {{0}} s old; {{1}} s are allowed.", "Pull the controller's cable."));
         }
 
-        rows.Add(Silent("silent-controller", InterlockInput.Controller, "temperature controller"));
-        rows.Add(Silent("silent-meter", InterlockInput.Meter, "source-meter"));
+        rows.Add(Silent("silent-controller", InterlockInput.Controller, "temperature controller", pace));
+        rows.Add(Silent("silent-meter", InterlockInput.Meter, "source-meter", pace));
         if (bench.Wiring.Lamp is not null)
         {
-            rows.Add(Silent("silent-lamp", InterlockInput.Lamp, "lamp"));
+            rows.Add(Silent("silent-lamp", InterlockInput.Lamp, "lamp", pace));
         }
 
         rows.Add(new("record-lost", InterlockInput.Record, InterlockCondition.Writing, double.NaN, "", 1, "the night passes and nothing of it is kept",
@@ -50,7 +54,7 @@ public sealed record InterlockTable(int Version, IReadOnlyList<InterlockRow> Row
         return Convert.ToHexStringLower(SHA256.HashData(Encoding.UTF8.GetBytes(text.ToString())));
     }
 
-    private static InterlockRow Silent(string id, InterlockInput input, string words) =>
-        new(id, input, InterlockCondition.Answering, 10, "s", 1, "what it does cannot be known or changed",
+    private static InterlockRow Silent(string id, InterlockInput input, string words, double pace) =>
+        new(id, input, InterlockCondition.Answering, 10 * pace, "s", 1, "what it does cannot be known or changed",
             $"The {words} has not answered for {{0}} s; {{1}} s are allowed.", $"Switch the {words} off.");
 }

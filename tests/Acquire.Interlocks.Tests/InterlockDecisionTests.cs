@@ -50,12 +50,36 @@ public sealed class InterlockDecisionTests
     }
 
     [Fact]
-    public void Spike_OfOneSample_DoesNotTrip()
+    public void Spike_OfOneSampleInThree_DoesNotTrip()
     {
         var state = InterlockState.Start(Table);
         for (var tick = 0; tick < 20; tick++)
         {
-            (state, _) = InterlockDecision.Decide(Table, state, Snapshot(tick * 0.5, tick % 2 == 0 ? 460 : 300, 300), tick * 0.5);
+            (state, _) = InterlockDecision.Decide(Table, state, Snapshot(tick * 0.5, tick % 3 == 0 ? 460 : 300, 300), tick * 0.5);
+        }
+
+        Assert.False(state.IsTripped);
+    }
+
+    [Fact]
+    public void OverTemperature_InTwoOfThreeSamples_Trips()
+    {
+        var state = InterlockState.Start(Table);
+        foreach (var (stageK, tick) in new[] { 460.0, 300, 460 }.Select((value, index) => (value, index)))
+        {
+            (state, _) = InterlockDecision.Decide(Table, state, Snapshot(tick * 0.5, stageK, 300), tick * 0.5);
+        }
+
+        Assert.Equal("over-temperature-stage", state.FirstOut!.RowId);
+    }
+
+    [Fact]
+    public void Judging_WithoutANewSample_ConfirmsNothing()
+    {
+        var state = InterlockState.Start(Table);
+        for (var command = 0; command < 10; command++)
+        {
+            (state, _) = InterlockDecision.Decide(Table, state, Snapshot(0, 460, 300), 0, newSample: false);
         }
 
         Assert.False(state.IsTripped);

@@ -98,7 +98,7 @@ internal static class BenchSession
             Instruments = instruments,
             Bench = prepared.Bench,
             Plan = prepared.Plan,
-            Interlocks = InterlockTable.For(prepared.Bench),
+            Interlocks = InterlockTable.For(prepared.Bench, setup.Durable ? prepared.Bench.Pace : 1),
             Recorder = recorder,
             Loop = setup.Loop,
             OriginTimestamp = origin,

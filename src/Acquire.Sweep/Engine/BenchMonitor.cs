@@ -7,39 +7,44 @@ using Acquire.Sweep.Gates;
 namespace Acquire.Sweep.Engine;
 
 /// <summary>
-/// Polls temperatures, heater and light at a fixed period to absolute deadlines, records every reading, and has the interlocks judge at each tick.
+/// Polls temperatures and light at a fixed period to absolute deadlines, records every reading, and has the interlocks judge: after every poll, and
+/// at every tick even while a poll hangs.
 /// </summary>
 public sealed class BenchMonitor
 {
     private const double SaturatedFraction = 0.995;
+    private const double SkippedEveryS = 60;
     private readonly EngineSetup _setup;
     private readonly RunLog _log;
-    private readonly double _startS;
+    private readonly TimeSpan _period;
     private InterlockState _interlocks;
     private SensorState _stage;
     private SensorState _sample;
     private double _controllerS;
     private double _meterS;
     private double _lampS;
+    private double _skippedToldS = double.NegativeInfinity;
     private long _skipped;
+    private bool _ended;
     private TaskCompletionSource? _next;
 
     public BenchMonitor(EngineSetup setup, RunLog log)
     {
         _setup = setup;
         _log = log;
-        _startS = log.NowS;
+        _period = TimeSpan.FromSeconds(setup.Bench.MonitorPeriodS);
+        var nowS = log.NowS;
         _interlocks = InterlockState.Start(setup.Interlocks);
-        _stage = SensorState.NotYet(_startS);
-        _sample = SensorState.NotYet(_startS);
-        _controllerS = _meterS = _lampS = _startS;
+        _stage = SensorState.NotYet(nowS);
+        _sample = SensorState.NotYet(nowS);
+        _controllerS = _meterS = _lampS = nowS;
     }
 
     /// <summary>The temperatures of the last ticks.</summary>
     public MonitorHistory History { get; } = new();
 
     /// <summary>The last tick.</summary>
-    public GateTick Last { get; private set; }
+    public GateTick Last { get; private set; } = new(double.NegativeInfinity, double.NaN, double.NaN, true);
 
     /// <summary>The set point the controller is working to [K]; NaN when unknown.</summary>
     public double SetPointK { get; private set; } = double.NaN;
@@ -50,71 +55,105 @@ public sealed class BenchMonitor
     /// <summary>The interlocks' memory.</summary>
     public InterlockState Interlocks => _interlocks;
 
+    /// <summary>True while the sequence is measuring: a meter that nobody asks cannot be silent.</summary>
+    public bool MeterIsInUse { get; set; }
+
     /// <summary>Called when rows trip, once for each evaluation that adds some.</summary>
     public Action<IReadOnlyList<Trip>>? Tripped { get; set; }
 
     /// <summary>Judges now, before a command: why nothing may be energised, or null.</summary>
     public string? WhyNot()
     {
-        Judge();
-        return _interlocks.FirstOut?.Text;
+        if (!_ended)
+        {
+            Judge(newSample: false);
+        }
+
+        return _interlocks.FirstOut?.Text ?? (_ended ? "the monitor has ended" : null);
     }
 
     /// <summary>The source-meter answered just now.</summary>
     public void MeterAnswered() => _meterS = _log.NowS;
 
-    /// <summary>Completes after the next tick.</summary>
+    /// <summary>Completes after the next poll, or when <see cref="Wake"/> is called; throws when cancelled or when the monitor has ended.</summary>
     public async Task NextTickAsync(CancellationToken cancellation)
     {
         // Awaited as it is: the continuation is posted to the loop, so that nothing runs inside the tick. A WaitAsync would pass through the
-        // thread pool, and a tick is never far.
-        _next ??= new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
-        await _next.Task;
+        // thread pool.
+        if (!_ended)
+        {
+            _next ??= new TaskCompletionSource(TaskCreationOptions.RunContinuationsAsynchronously);
+            await _next.Task;
+        }
+
         cancellation.ThrowIfCancellationRequested();
+        if (_ended)
+        {
+            throw new OperationCanceledException("The monitor has ended.");
+        }
     }
 
-    /// <summary>Ticks until cancelled.</summary>
+    /// <summary>Wakes whoever waits for a tick, because what they wait for will not come.</summary>
+    public void Wake()
+    {
+        var waiting = _next;
+        _next = null;
+        waiting?.TrySetResult();
+    }
+
+    /// <summary>Ticks until cancelled. Throws when one of its loops fails; the engine makes the bench safe then.</summary>
     public async Task RunAsync(CancellationToken cancellation)
     {
-        var period = TimeSpan.FromSeconds(_setup.Bench.MonitorPeriodS);
+        List<Task> loops = [EveryAsync(PollLoopAsync, cancellation), EveryAsync(JudgeTickAsync, cancellation)];
+        if (_setup.Instruments.Lamp is { } lamp)
+        {
+            loops.Add(EveryAsync(token => PollLampAsync(lamp, token), cancellation));
+        }
+
+        try
+        {
+            await await Task.WhenAny(loops);
+        }
+        finally
+        {
+            _ended = true;
+            Wake();
+        }
+    }
+
+    /// <summary>Runs an action at t0 + k * period: a stall loses ticks, never the grid.</summary>
+    private async Task EveryAsync(Func<CancellationToken, ValueTask> action, CancellationToken cancellation)
+    {
         var clock = _setup.Loop.Clock;
         var start = clock.GetTimestamp();
         for (long tick = 0; !cancellation.IsCancellationRequested;)
         {
-            await PollAsync(cancellation);
-            Judge();
-            Interlocked.Exchange(ref _next, null)?.TrySetResult();
+            try
+            {
+                await action(cancellation);
+            }
+            catch (OperationCanceledException) when (cancellation.IsCancellationRequested)
+            {
+                return;
+            }
 
-            // Tick k is due at t0 + k * period: a stall loses ticks, never the grid.
-            var due = Math.Max(tick + 1, (long)Math.Floor(clock.GetElapsedTime(start) / period) + 1);
-            _skipped += due - tick - 1;
+            var elapsed = clock.GetElapsedTime(start); // read once: a second look may be later
+            var due = Math.Max(tick + 1, (long)Math.Floor(elapsed / _period) + 1);
+            Skipped(due - tick - 1);
             tick = due;
-            await Task.Delay((period * due) - clock.GetElapsedTime(start), clock, cancellation).ConfigureAwait(ConfigureAwaitOptions.SuppressThrowing | ConfigureAwaitOptions.ContinueOnCapturedContext);
-        }
-
-        Interlocked.Exchange(ref _next, null)?.TrySetResult();
-        if (_skipped > 0)
-        {
-            _log.Event("clock", Severity.Note, "monitor", FormattableString.Invariant($"{_skipped} monitor ticks were skipped in this run."));
+            var wait = (_period * due) - elapsed;
+            await Task.Delay(wait > TimeSpan.Zero ? wait : TimeSpan.Zero, clock, cancellation).ConfigureAwait(ConfigureAwaitOptions.SuppressThrowing | ConfigureAwaitOptions.ContinueOnCapturedContext);
         }
     }
 
-    private async ValueTask PollAsync(CancellationToken cancellation)
+    private void Skipped(long ticks)
     {
-        try
+        _skipped += ticks;
+        if (ticks > 0 && _log.NowS - _skippedToldS >= SkippedEveryS)
         {
-            await PollLoopAsync(cancellation);
-            if (_setup.Instruments.Lamp is { } lamp)
-            {
-                await PollLampAsync(lamp, cancellation);
-            }
+            _skippedToldS = _log.NowS;
+            _log.Event("clock", Severity.Note, "monitor", FormattableString.Invariant($"{_skipped} ticks skipped so far."));
         }
-        catch (OperationCanceledException)
-        {
-            // The run is ending.
-        }
-
-        History.Add(Last.AtS, Last.StageK, Last.SampleK, LightMonitorA);
     }
 
     private async ValueTask PollLoopAsync(CancellationToken cancellation)
@@ -135,8 +174,11 @@ public sealed class BenchMonitor
         }
 
         SetPointK = poll.SetPointK.IsGood ? poll.SetPointK.Value : double.NaN;
-        var saturated = poll.HeaterW.IsGood && poll.HeaterW.Value >= SaturatedFraction * _setup.Bench.Limits.HeaterPowerW;
+        var saturated = !poll.HeaterW.IsGood || poll.HeaterW.Value >= SaturatedFraction * _setup.Bench.Limits.HeaterPowerW;
         Last = new(nowS, poll.StageK.IsGood ? poll.StageK.Value : double.NaN, poll.SampleK.IsGood ? poll.SampleK.Value : double.NaN, saturated);
+        History.Add(nowS, Last.StageK, Last.SampleK, LightMonitorA);
+        Judge(newSample: true);
+        Wake();
     }
 
     private async ValueTask PollLampAsync(ILamp lamp, CancellationToken cancellation)
@@ -153,13 +195,17 @@ public sealed class BenchMonitor
         }
     }
 
-    /// <summary>A meter that nobody asks cannot be silent: outside measurements its silence does not count, so the sequence asks it before it counts on it.</summary>
-    private void Judge()
+    private ValueTask JudgeTickAsync(CancellationToken cancellation)
+    {
+        Judge(newSample: false);
+        return ValueTask.CompletedTask;
+    }
+
+    private void Judge(bool newSample)
     {
         var nowS = _log.NowS;
-        var meterS = MeterIsInUse ? _meterS : nowS;
-        var snapshot = new InterlockSnapshot(_stage, _sample, _controllerS, meterS, _lampS, _log.Health.Failure);
-        (_interlocks, var fresh) = InterlockDecision.Decide(_setup.Interlocks, _interlocks, snapshot, nowS);
+        var snapshot = new InterlockSnapshot(_stage, _sample, _controllerS, MeterIsInUse ? _meterS : nowS, _lampS, _log.Health.Failure);
+        (_interlocks, var fresh) = InterlockDecision.Decide(_setup.Interlocks, _interlocks, snapshot, nowS, newSample);
         if (fresh.IsEmpty)
         {
             return;
@@ -172,9 +218,6 @@ public sealed class BenchMonitor
 
         Tripped?.Invoke(fresh);
     }
-
-    /// <summary>True while the sequence is measuring.</summary>
-    public bool MeterIsInUse { get; set; }
 
     private static bool Answered(in Measured measured) => (measured.Quality & (Quality.TimedOut | Quality.LinkFailed)) == 0;
 }

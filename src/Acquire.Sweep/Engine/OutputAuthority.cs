@@ -9,7 +9,8 @@ namespace Acquire.Sweep.Engine;
 /// The only object that may energise heater, bias or light. It asks the interlocks at every command, holds every value against the bench's
 /// limits, and once it has made the bench safe it energises nothing again.
 /// </summary>
-public sealed class OutputAuthority(BenchInstruments instruments, BenchLimits limits, Func<string?> whyNot, RunLog log, TimeProvider linkClock)
+public sealed class OutputAuthority(
+    BenchInstruments instruments, BenchLimits limits, Func<string?> whyNot, RunLog log, TimeProvider linkClock, LampWiring? wiring = null)
 {
     private static readonly TimeSpan MakeSafeBound = TimeSpan.FromSeconds(30);
     private bool _closed;
@@ -57,19 +58,22 @@ public sealed class OutputAuthority(BenchInstruments instruments, BenchLimits li
     public async ValueTask<CommandOutcome> OutputAsync(bool on, CancellationToken cancellation) =>
         (on ? Refusal("bias output", true, 1, "", "") : null) ?? await instruments.Meter.OutputAsync(on, cancellation);
 
-    /// <summary>Switches the light on at a drive current.</summary>
-    public async ValueTask<CommandOutcome> LightOnAsync(double driveA, CancellationToken cancellation)
+    /// <summary>Switches the light on at an irradiance on the sample [W/m2].</summary>
+    public async ValueTask<CommandOutcome> LightOnAsync(double irradianceWPerM2, CancellationToken cancellation)
     {
-        if (instruments.Lamp is not { } lamp)
+        if (instruments.Lamp is not { } lamp || wiring is null)
         {
             return CommandOutcome.Failed("Light refused: the bench has no lamp.");
         }
 
-        if (Refusal("light", driveA >= 0 && double.IsFinite(driveA), driveA, "A", "a drive of zero or more") is { } refused)
+        var most = Math.Min(limits.IrradianceWPerM2, wiring.IrradianceAtRatedWPerM2);
+        if (Refusal("light", irradianceWPerM2 > 0 && irradianceWPerM2 <= most * (1 + 1e-9), irradianceWPerM2, "W/m2",
+            string.Create(CultureInfo.InvariantCulture, $"at most {most:G6} W/m2")) is { } refused)
         {
             return refused;
         }
 
+        var driveA = wiring.RatedDriveA * irradianceWPerM2 / wiring.IrradianceAtRatedWPerM2;
         var set = await lamp.SetDriveAsync(driveA, cancellation);
         if (!set.Done || _closed)
         {
@@ -101,12 +105,18 @@ public sealed class OutputAuthority(BenchInstruments instruments, BenchLimits li
 
     /// <summary>
     /// Heater off, bias 0, light off, all instruments at once, with right of way over whatever is in flight, bounded. One that fails does not stop the
-    /// others. What was done is recorded. True when every instrument confirmed. A second call waits for the first.
+    /// others. What was done is recorded. True when every instrument confirmed.
     /// </summary>
     public Task<bool> MakeSafeAsync(string because)
     {
         _closed = true;
-        return _makingSafe ??= MakeSafeOnceAsync(because);
+        // Pressed again after an instrument refused, it tries again; while one attempt is under way it is that one.
+        if (_makingSafe is null || (_makingSafe.IsCompleted && !(_makingSafe.IsCompletedSuccessfully && _makingSafe.Result)))
+        {
+            _makingSafe = MakeSafeOnceAsync(because);
+        }
+
+        return _makingSafe;
     }
 
     private async Task<bool> MakeSafeOnceAsync(string because)
@@ -139,9 +149,9 @@ public sealed class OutputAuthority(BenchInstruments instruments, BenchLimits li
         {
             problem = $"no confirmation within {MakeSafeBound.TotalSeconds:F0} s";
         }
-        catch (Exception fault) when (fault is IOException or InvalidOperationException or ObjectDisposedException)
+        catch (Exception fault)
         {
-            problem = fault.Message;
+            problem = fault.Message; // whatever it was, the other instruments still have to be made safe
         }
 
         log.Event("fault", Severity.Alarm, instrument.Name, $"{instrument.Name} at {instrument.Address} did not confirm make-safe: {problem}");

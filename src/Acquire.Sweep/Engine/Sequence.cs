@@ -37,6 +37,8 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
     private const int RecoveryReadings = 5;
     private readonly ConductanceMeasurement _measurement = new(setup, log, outputs, monitor);
     private readonly Dictionary<LightState, double> _lastS = [];
+    private double _darkPlusA = double.NaN;
+    private bool _lampSteady = true;
     private GateResult _gate;
     private StabilityGate? _asked;
     private double _soakS = double.NaN;
@@ -75,7 +77,7 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
 
     private async Task<string?> GoToAsync(GoToStep step, CancellationToken cancellation)
     {
-        (place.Phase, place.TargetK, _asked, _gateMet, _skipMeasurements) = ("ramp", step.TemperatureK, step.Gate, false, false);
+        (place.Phase, place.TargetK, _asked, _gateMet, _skipMeasurements, _darkPlusA) = ("ramp", step.TemperatureK, step.Gate, false, false, double.NaN);
         log.Event("step", Severity.Note, "sequence", string.Create(CultureInfo.InvariantCulture,
             $"Leg {step.Leg}: to {step.TemperatureK:F2} K at {step.RampKPerS * 60:G4} K/min."));
         var outcome = await outputs.ApproachAsync(step.TemperatureK, step.RampKPerS, cancellation);
@@ -128,8 +130,7 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
                 _skipMeasurements = true;
                 return null;
             case TimeOutPolicy.Hold:
-                await HoldForHelpAsync(step, cancellation);
-                return null;
+                return await HoldForHelpAsync(step, cancellation) ? null : text + " Nobody came.";
             case TimeOutPolicy.End:
                 return text;
             default:
@@ -137,8 +138,8 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
         }
     }
 
-    /// <summary>Waits at the temperature until the gate is met after all or a person acts; bounded by ten gate time-outs, then the point is flagged.</summary>
-    private async Task HoldForHelpAsync(GoToStep step, CancellationToken cancellation)
+    /// <summary>Waits at the temperature until the gate is met after all or a person ends the run; bounded by ten gate time-outs. True when it is met.</summary>
+    private async Task<bool> HoldForHelpAsync(GoToStep step, CancellationToken cancellation)
     {
         log.Event("gate", Severity.Alarm, "sequence", "Holding the temperature and waiting for a person.");
         var gate = new TemperatureGate(step.Gate, step.TemperatureK);
@@ -152,6 +153,7 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
 
         _gateMet = _gate.Passed;
         place.Waiting = "";
+        return _gateMet;
     }
 
     private async Task MeasureAsync(MeasureStep step, CancellationToken cancellation)
@@ -177,17 +179,31 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
         }
         finally
         {
-            if (step.Light == LightState.Lit && !outputs.IsClosed)
+            if (step.Light == LightState.Lit)
             {
-                await outputs.LightOffAsync(CancellationToken.None);
+                await LightOffAsync();
             }
+        }
+    }
+
+    private async Task LightOffAsync()
+    {
+        if (outputs.IsClosed)
+        {
+            return; // the bench has been made safe already
+        }
+
+        var outcome = await outputs.LightOffAsync(CancellationToken.None);
+        if (!outcome.Done && !outputs.IsClosed)
+        {
+            log.Event("fault", Severity.Alarm, "sequence", $"The light could not be switched off: {outcome.Problem}");
+            throw new StepFailedException($"The light could not be switched off: {outcome.Problem}");
         }
     }
 
     private async Task LightAsync(MeasureStep step, CancellationToken cancellation)
     {
-        var wiring = setup.Bench.Wiring.Lamp ?? throw new StepFailedException("The plan wants light and the bench has no lamp.");
-        var outcome = await outputs.LightOnAsync(wiring.RatedDriveA * step.IrradianceWPerM2 / wiring.IrradianceAtRatedWPerM2, cancellation);
+        var outcome = await outputs.LightOnAsync(step.IrradianceWPerM2, cancellation);
         if (!outcome.Done)
         {
             throw new StepFailedException(outcome.Problem ?? "The lamp refused.");
@@ -202,27 +218,27 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
             steady.Add(monitor.LightMonitorA);
         }
 
-        place.Waiting = "";
+        (_lampSteady, place.Waiting) = (steady.IsSettled, "");
     }
 
     /// <summary>Waits, bounded, until the dark current is back near its value before the light; says so when it is not.</summary>
     private async Task<string?> RecoverAsync(MeasureStep step, CancellationToken cancellation)
     {
-        if (!_lastS.TryGetValue(LightState.Dark, out var before))
+        if (!double.IsFinite(_darkPlusA))
         {
-            return null;
+            return "no dark value of this temperature to compare with";
         }
 
         monitor.MeterAnswered();
         monitor.MeterIsInUse = true;
         await _measurement.PrepareAsync(step, cancellation);
-        await _measurement.FindRangeAsync(step, before, cancellation);
+        await _measurement.FindRangeAsync(step, _darkPlusA / step.BiasV, cancellation);
         var startS = log.NowS;
         var relative = double.NaN;
         do
         {
             var currentA = await _measurement.WatchAsync(RecoveryReadings, cancellation);
-            relative = Math.Abs((currentA / (before * step.BiasV)) - 1);
+            relative = Math.Abs((currentA / _darkPlusA) - 1); // the same polarity at the same temperature, so that a background drops out
             place.Waiting = string.Create(CultureInfo.InvariantCulture, $"dark current {relative * 100:F1} % off its value before light, needs {step.RecoverRelative * 100:G3} %");
             await monitor.NextTickAsync(cancellation);
         }
@@ -246,6 +262,17 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
         var quality = result.Quality | (_gateMet ? Quality.Good : Quality.UnstableTemperature) | (double.IsFinite(means.SampleK) ? Quality.Good : Quality.Implausible)
             | (recovery is null ? Quality.Good : Quality.Unsettled);
         _lastS[step.Light] = result.ConductanceS;
+        if (step.Light == LightState.Dark)
+        {
+            _darkPlusA = result.Plus.CurrentA;
+        }
+
+        if (step.Light == LightState.Lit && !_lampSteady)
+        {
+            quality |= Quality.Unsettled;
+            recovery = "the lamp was not steady";
+        }
+
         var point = PointOf(step, result, (startUs, endUs), means) with { Quality = quality, Reason = Reason(quality, recovery), GatesJson = Gates(result) };
         log.Point(point);
         place.Points++;
@@ -312,7 +339,7 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
         return reasons.Count == 0 ? null : string.Join("; ", reasons);
     }
 
-    private string Gates(ReversalResult result) => JsonSerializer.Serialize(new Dictionary<string, object>
+    private string Gates(ReversalResult result) => JsonSerializer.Serialize(new Dictionary<string, object?>
     {
         ["band_K"] = Finite(_asked?.BandK),
         ["drift_K_per_s"] = Finite(_asked?.RateKPerS),
@@ -324,5 +351,5 @@ public sealed class Sequence(EngineSetup setup, RunLog log, OutputAuthority outp
         ["signal_settled"] = result.Settled,
     });
 
-    private static double Finite(double? value) => value is { } number && double.IsFinite(number) ? number : -1;
+    private static double? Finite(double? value) => value is { } number && double.IsFinite(number) ? number : null;
 }

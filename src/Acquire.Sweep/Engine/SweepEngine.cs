@@ -31,6 +31,7 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
     private readonly CancellationTokenSource _sequenceEnd = new();
     private string _state = "starting";
     private string? _stopReason;
+    private string? _fault;
     private TaskCompletionSource? _hold;
 
     public SweepEngine(EngineSetup setup)
@@ -38,7 +39,7 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
         _setup = setup;
         _log = new RunLog(setup.Recorder, setup.Loop.Clock, setup.OriginTimestamp, setup.Log);
         _monitor = new BenchMonitor(setup, _log);
-        _outputs = new OutputAuthority(setup.Instruments, setup.Bench.Limits, _monitor.WhyNot, _log, setup.LinkClock);
+        _outputs = new OutputAuthority(setup.Instruments, setup.Bench.Limits, _monitor.WhyNot, _log, setup.LinkClock, setup.Bench.Wiring.Lamp);
         _sequence = new Sequence(setup, _log, _outputs, _monitor, _place) { HoldAsync = WaitWhileHeldAsync };
         _monitor.Tripped = trips => EndSequence(null);
     }
@@ -50,12 +51,13 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
         _state = "running";
         using var stopped = cancellation.Register(() => _setup.Loop.Post(_ => Stop("the system", "it asked the program to end"), null));
         using var monitorEnd = new CancellationTokenSource();
-        var monitoring = _monitor.RunAsync(monitorEnd.Token);
+        var monitoring = WatchAsync(monitorEnd.Token);
         var outcome = await SequenceAsync();
         _state = "ending";
         (_place.Phase, _place.Waiting) = ("safe", "");
         var safe = await _outputs.MakeSafeAsync(outcome.State == "completed" ? "the plan is done" : outcome.Reason);
-        await _monitor.NextTickAsync(CancellationToken.None); // one more look at the bench after it was made safe
+        safe = safe || await _outputs.MakeSafeAsync("once more, because not every instrument confirmed");
+        await LookOnceMoreAsync();
         monitorEnd.Cancel(); // not CancelAsync, which passes through the thread pool
         await monitoring;
         if (!safe && outcome.State == "completed")
@@ -129,10 +131,41 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
     /// <inheritdoc/>
     public void Dispose() => _sequenceEnd.Dispose();
 
+    /// <summary>The monitor under watch: when it ends by itself the bench is made safe, since nobody looks at it any more.</summary>
+    private async Task WatchAsync(CancellationToken cancellation)
+    {
+        try
+        {
+            await _monitor.RunAsync(cancellation);
+        }
+        catch (Exception fault)
+        {
+            _fault = $"The monitor failed: {fault.Message}";
+            _log.Event("fault", Severity.Trip, "monitor", _fault);
+            _ = _outputs.MakeSafeAsync(_fault); // recorded by itself; the end of the run waits for the same task
+            EndSequence(null);
+        }
+    }
+
+    /// <summary>One more poll of the bench after it was made safe, for the record; a hanging instrument does not keep the run from ending.</summary>
+    private async Task LookOnceMoreAsync()
+    {
+        try
+        {
+            var bound = Task.Delay(TimeSpan.FromSeconds(4 * _setup.Bench.MonitorPeriodS), _setup.Loop.Clock);
+            await Task.WhenAny(_monitor.NextTickAsync(CancellationToken.None), bound);
+        }
+        catch (OperationCanceledException)
+        {
+            // The monitor has ended already.
+        }
+    }
+
     private async Task<RunOutcome> SequenceAsync()
     {
         try
         {
+            await _monitor.NextTickAsync(_sequenceEnd.Token); // nothing is commanded before the first temperatures are known
             var early = await _sequence.RunAsync(_sequenceEnd.Token);
             return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text)
                 : early is not null ? new("stopped", early)
@@ -140,15 +173,25 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
         }
         catch (OperationCanceledException)
         {
-            return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text) : new("stopped", _stopReason ?? "the sequence was cancelled");
+            return Ended(null);
         }
         catch (StepFailedException failure)
         {
-            // A command that a trip refused is the trip's doing.
-            return _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text)
-                : _stopReason is { } stopped ? new("stopped", stopped) : new("failed", failure.Message);
+            return Ended(failure.Message);
+        }
+        catch (Exception unexpected)
+        {
+            _log.Event("fault", Severity.Alarm, "sequence", $"The sequence failed: {unexpected.GetType().Name}: {unexpected.Message}");
+            return Ended($"The sequence failed: {unexpected.Message}");
         }
     }
+
+    /// <summary>How a sequence that did not reach its end is told: a trip first, then a fault, then a person, then what failed.</summary>
+    private RunOutcome Ended(string? failure) =>
+        _monitor.Interlocks.FirstOut is { } trip ? new("tripped", trip.Text)
+        : _fault is { } fault ? new("failed", fault)
+        : _stopReason is { } stopped ? new("stopped", stopped)
+        : failure is not null ? new("failed", failure) : new("stopped", "the sequence was cancelled");
 
     private void EndSequence(string? reason)
     {
@@ -159,6 +202,7 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
         }
 
         _sequenceEnd.Cancel();
+        _monitor.Wake();
         _hold?.TrySetResult();
         _hold = null;
     }

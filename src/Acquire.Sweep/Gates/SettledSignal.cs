@@ -3,7 +3,7 @@ namespace Acquire.Sweep.Gates;
 /// <summary>Whether a signal has settled: the means of two adjacent windows agree, twice in a row.</summary>
 /// <remarks>
 /// Accepts when |m2 - m1| &lt;= max(2 SEM, relative * |m2|), SEM the standard error of the difference from the scatter inside both windows.
-/// Needs at least three windows. A value that is not a number starts it again. A recommended default of the field, common practice.
+/// and what an exponential through the last three means would still bring is as small. Needs at least three windows. A value that is not a number starts it again. A recommended default of the field, common practice.
 /// </remarks>
 public sealed class SettledSignal(int window, double relative)
 {
@@ -31,14 +31,32 @@ public sealed class SettledSignal(int window, double relative)
 
         var (m1, s1) = Mean(_values.Count - (2 * window));
         var (m2, s2) = Mean(_values.Count - window);
-        var sem = Math.Sqrt((s1 + s2) / window);
-        _agreements = Math.Abs(m2 - m1) <= Math.Max(2 * sem, relative * Math.Abs(m2)) ? _agreements + 1 : 0;
+        var noise = 2 * Math.Sqrt((s1 + s2) / window);
+        var agrees = Math.Abs(m2 - m1) <= Math.Max(noise, relative * Math.Abs(m2))
+            && (_values.Count < 3 * window || Rest(m1, m2, noise) <= relative * Math.Abs(m2));
+        _agreements = agrees ? _agreements + 1 : 0;
         if (_values.Count > 8 * window)
         {
             _values.RemoveRange(0, 4 * window);
         }
 
         return IsSettled;
+    }
+
+    /// <summary>
+    /// What is still to come if the last three windows lie on one exponential (Aitken's extrapolation); zero when their steps drown in the noise.
+    /// Two windows that are short against the time constant agree long before the signal has arrived.
+    /// </summary>
+    private double Rest(double m1, double m2, double noise)
+    {
+        var before = m1 - Mean(_values.Count - (3 * window)).Mean;
+        var last = m2 - m1;
+        if (Math.Abs(last) <= noise || before * last <= 0)
+        {
+            return 0;
+        }
+
+        return Math.Abs(last) < Math.Abs(before) ? last * last / Math.Abs(before - last) : double.PositiveInfinity;
     }
 
     private (double Mean, double Variance) Mean(int from)

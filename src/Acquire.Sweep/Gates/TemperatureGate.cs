@@ -6,7 +6,7 @@ namespace Acquire.Sweep.Gates;
 /// <param name="AtS">When [s], monotonic.</param>
 /// <param name="StageK">Stage temperature [K]; NaN when the reading was not good.</param>
 /// <param name="SampleK">Sample temperature [K]; NaN when the reading was not good.</param>
-/// <param name="Saturated">True when the heater was at its limit.</param>
+/// <param name="Saturated">True when the heater was at its limit, or its power could not be read.</param>
 public readonly record struct GateTick(double AtS, double StageK, double SampleK, bool Saturated);
 
 /// <summary>What the gate found over its window.</summary>
@@ -25,6 +25,10 @@ public readonly record struct GateResult(bool Passed, double SpanS, double Large
 /// </remarks>
 public sealed class TemperatureGate
 {
+    /// <summary>A holder keeps its sample a steady little off the stage; more than this is a fault or a sample still on its way.</summary>
+    private const double LargestOffsetK = 1;
+
+    private const double LargestOffsetFraction = 0.02;
     private readonly StabilityGate _gate;
     private readonly double _targetK;
     private readonly Queue<GateTick> _window = new();
@@ -52,7 +56,7 @@ public sealed class TemperatureGate
         var spanS = nowS - _window.Peek().AtS;
         var distance = 0.0;
         var saturated = false;
-        double meanT = 0, meanK = 0;
+        double meanT = 0, meanK = 0, stageK = 0;
         foreach (var tick in _window)
         {
             // Max gives NaN once a reading was bad, and NaN passes no comparison below.
@@ -60,9 +64,11 @@ public sealed class TemperatureGate
             saturated |= tick.Saturated;
             meanT += tick.AtS;
             meanK += tick.SampleK;
+            stageK += tick.StageK;
         }
 
         meanT /= _window.Count;
+        stageK /= _window.Count;
         meanK /= _window.Count;
         double sxx = 0, sxy = 0;
         foreach (var tick in _window)
@@ -73,8 +79,11 @@ public sealed class TemperatureGate
 
         var drift = sxx > 0 ? sxy / sxx : double.NaN;
         var full = spanS >= _gate.WindowS * 0.95;
-        var passed = full && distance <= _gate.BandK && Math.Abs(drift) <= _gate.RateKPerS && !saturated;
-        return new(passed, spanS, distance, drift, passed ? "" : Waiting(full, spanS, distance, drift, saturated));
+        var lagK = Math.Abs(meanK - stageK);
+        var near = lagK <= Math.Max(LargestOffsetK, LargestOffsetFraction * _targetK);
+        var passed = full && distance <= _gate.BandK && Math.Abs(drift) <= _gate.RateKPerS && !saturated && near;
+        return new(passed, spanS, distance, drift, passed ? "" : near || double.IsNaN(distance) ? Waiting(full, spanS, distance, drift, saturated)
+            : FormattableString.Invariant($"sample {lagK:F1} K off the stage: is its sensor in place?"));
     }
 
     private string Waiting(bool full, double spanS, double distance, double drift, bool saturated)
@@ -88,7 +97,7 @@ public sealed class TemperatureGate
 
         if (saturated)
         {
-            return "heater at its limit";
+            return "heater at its limit, or its power not known";
         }
 
         return full && !(Math.Abs(drift) <= _gate.RateKPerS)

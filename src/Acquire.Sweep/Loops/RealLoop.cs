@@ -24,16 +24,29 @@ public sealed class RealLoop(TimeProvider clock) : EngineLoop, IDisposable
         SetSynchronizationContext(this);
         try
         {
+            Exception? first = null;
             var task = main();
             // Wakes the loop when the last continuation ran on no loop at all, as for a task that fails at once.
             _ = task.ContinueWith(static (_, self) => ((RealLoop)self!).Post(static _ => { }, null), this, CancellationToken.None, TaskContinuationOptions.ExecuteSynchronously, TaskScheduler.Default);
             while (!task.IsCompleted)
             {
                 var (callback, state) = _ready.Take();
-                callback(state);
+                try
+                {
+                    callback(state);
+                }
+                catch (Exception fault)
+                {
+                    // Nobody may end the loop under the engine: it goes on, makes safe, and the fault is thrown at the end.
+                    first ??= fault;
+                }
             }
 
             task.GetAwaiter().GetResult();
+            if (first is not null)
+            {
+                throw new InvalidOperationException("A callback on the engine's loop failed: " + first.Message, first);
+            }
         }
         finally
         {

@@ -26,30 +26,47 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
         try
         {
             await PrepareAsync(step, cancellation);
-            var range = await FindRangeAsync(step, expectedS, cancellation);
-            for (var repeat = 0; ; repeat++)
-            {
-                var result = await MeasureAsync(step, range, waiting, cancellation);
-                var overrange = ((result.Plus.Faults | result.Minus.Faults) & Quality.Overrange) != 0;
-                if (!overrange || repeat > 0 || range + 1 >= setup.Instruments.Meter.CurrentRangesA.Count)
-                {
-                    return result;
-                }
-
-                range++;
-                log.Event("range", Severity.Warning, setup.Instruments.Meter.Name, FormattableString.Invariant(
-                    $"Overload at {step.TemperatureK:F1} K: up to the {setup.Instruments.Meter.CurrentRangesA[range]:G3} A range, and the point is repeated."));
-                await LockRangeAsync(range, cancellation);
-            }
+            return await RangedAsync(step, expectedS, waiting, cancellation);
         }
         finally
         {
+            await BiasOffAsync();
             monitor.MeterIsInUse = false;
-            if (!outputs.IsClosed)
+        }
+    }
+
+    private async ValueTask<ReversalResult> RangedAsync(MeasureStep step, double expectedS, Action<string> waiting, CancellationToken cancellation)
+    {
+        var range = await FindRangeAsync(step, expectedS, cancellation);
+        for (var repeat = 0; ; repeat++)
+        {
+            var result = await MeasureAsync(step, range, waiting, cancellation);
+            var overrange = ((result.Plus.Faults | result.Minus.Faults) & Quality.Overrange) != 0;
+            if (!overrange || repeat > 0 || range + 1 >= setup.Instruments.Meter.CurrentRangesA.Count)
             {
-                await outputs.BiasAsync(0, CancellationToken.None);
-                await outputs.OutputAsync(false, CancellationToken.None);
+                return result;
             }
+
+            range++;
+            log.Event("range", Severity.Warning, setup.Instruments.Meter.Name, FormattableString.Invariant(
+                $"Overload at {step.TemperatureK:F1} K: up to the {setup.Instruments.Meter.CurrentRangesA[range]:G3} A range, and the point is repeated."));
+            await LockRangeAsync(range, cancellation);
+        }
+    }
+
+    /// <summary>Bias 0 and output off, checked: a bias that stays on is a failure of the run.</summary>
+    private async ValueTask BiasOffAsync()
+    {
+        if (outputs.IsClosed)
+        {
+            return; // the bench has been made safe already
+        }
+
+        var zero = await outputs.BiasAsync(0, CancellationToken.None);
+        var off = await outputs.OutputAsync(false, CancellationToken.None);
+        if (!off.Done && !outputs.IsClosed)
+        {
+            throw new StepFailedException($"The bias could not be switched off: {off.Problem ?? zero.Problem}");
         }
     }
 
@@ -86,7 +103,7 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
         for (var change = 0; change < MostRangeChanges; change++)
         {
             await LockRangeAsync(range, cancellation);
-            var reading = await DiscardAsync(cancellation);
+            var reading = await DiscardAsync(DiscardedAfterChange, cancellation);
             if ((reading.CurrentA.Quality & Quality.Overrange) != 0 && range + 1 < ranges.Count)
             {
                 range++;
@@ -112,30 +129,38 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
 
     private async ValueTask<ReversalResult> MeasureAsync(MeasureStep step, int range, Action<string> waiting, CancellationToken cancellation)
     {
-        var (settled, settleS) = await SettleAsync(step, waiting, cancellation);
-        waiting("");
         var plus = new PolaritySeries();
         var minus = new PolaritySeries();
-        for (var pair = 0; pair < step.Reversals; pair++)
+        // The first pair finds out how long the signal needs after each polarity; the later pairs give it as long.
+        var up = await SettleAsync(step, +1, waiting, cancellation);
+        await SeriesAsync(step, plus, cancellation);
+        var down = await SettleAsync(step, -1, waiting, cancellation);
+        await SeriesAsync(step, minus, cancellation);
+        waiting("");
+        var discarded = Math.Max(up.Discard, down.Discard);
+        for (var pair = 1; pair < step.Reversals; pair++)
         {
-            await SeriesAsync(step, plus, +1, pair > 0, cancellation);
-            await SeriesAsync(step, minus, -1, true, cancellation);
+            await ReverseAsync(step, +1, discarded, cancellation);
+            await SeriesAsync(step, plus, cancellation);
+            await ReverseAsync(step, -1, discarded, cancellation);
+            await SeriesAsync(step, minus, cancellation);
         }
 
-        return new(plus, minus, setup.Instruments.Meter.CurrentRangesA[range], settleS, settled);
+        return new(plus, minus, setup.Instruments.Meter.CurrentRangesA[range], Math.Max(up.SettleS, down.SettleS), up.Settled && down.Settled);
     }
 
-    private async ValueTask<(bool Settled, double SettleS)> SettleAsync(MeasureStep step, Action<string> waiting, CancellationToken cancellation)
+    private async ValueTask<Settling> SettleAsync(MeasureStep step, int sign, Action<string> waiting, CancellationToken cancellation)
     {
-        // A repeated point starts from the negative polarity.
-        Need(await outputs.BiasAsync(step.BiasV, cancellation));
-        await DiscardAsync(cancellation);
+        Need(await outputs.BiasAsync(sign * step.BiasV, cancellation));
+        await DiscardAsync(DiscardedAfterChange, cancellation);
         var test = new SettledSignal(step.SettledWindow, step.SettledRelative);
         var startS = log.NowS;
+        var readings = 0;
         waiting("signal settling");
         while (!test.IsSettled && log.NowS - startS <= step.SettleTimeOutS)
         {
             var reading = await ReadAsync(cancellation);
+            readings++;
             test.Add(reading.CurrentA.IsGood ? reading.CurrentA.Value : double.NaN);
             if ((reading.CurrentA.Quality & Quality.Overrange) != 0)
             {
@@ -143,17 +168,19 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
             }
         }
 
-        return (test.IsSettled, log.NowS - startS);
+        // A signal that passes at the first chance needs no more than the discarded readings; a slow one needs its whole wait again.
+        var discard = readings <= 3 * step.SettledWindow ? DiscardedAfterChange : readings;
+        return new(test.IsSettled, log.NowS - startS, discard);
     }
 
-    private async ValueTask SeriesAsync(MeasureStep step, PolaritySeries series, int sign, bool reversed, CancellationToken cancellation)
+    private async ValueTask ReverseAsync(MeasureStep step, int sign, int discarded, CancellationToken cancellation)
     {
-        if (reversed)
-        {
-            Need(await outputs.BiasAsync(sign * step.BiasV, cancellation));
-            await DiscardAsync(cancellation);
-        }
+        Need(await outputs.BiasAsync(sign * step.BiasV, cancellation));
+        await DiscardAsync(discarded, cancellation);
+    }
 
+    private async ValueTask SeriesAsync(MeasureStep step, PolaritySeries series, CancellationToken cancellation)
+    {
         for (var i = 0; i < step.Readings; i++)
         {
             series.Add(await ReadAsync(cancellation));
@@ -164,10 +191,10 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
         Need(await setup.Instruments.Meter.SetRangeAsync(setup.Instruments.Meter.CurrentRangesA[range], cancellation));
 
     /// <summary>Readings that are recorded and not used: the transient of a change passes. Returns the last.</summary>
-    private async ValueTask<SourceReading> DiscardAsync(CancellationToken cancellation)
+    private async ValueTask<SourceReading> DiscardAsync(int count, CancellationToken cancellation)
     {
         var last = default(SourceReading);
-        for (var i = 0; i < DiscardedAfterChange; i++)
+        for (var i = 0; i < count; i++)
         {
             last = await ReadAsync(cancellation);
         }
@@ -190,6 +217,8 @@ public sealed class ConductanceMeasurement(EngineSetup setup, RunLog log, Output
 
         return reading;
     }
+
+    private readonly record struct Settling(bool Settled, double SettleS, int Discard);
 
     private static void Need(CommandOutcome outcome)
     {

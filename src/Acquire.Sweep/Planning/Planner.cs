@@ -13,7 +13,7 @@ public static class Planner
     public const int SettledWindow = 5;
 
     /// <summary>Part of a gate's window that passes on average before it starts to hold.</summary>
-    private const double SoakOverhead = 1.25;
+    private const double SoakOverhead = 1.1;
 
     /// <summary>Plans; the protocol has passed <see cref="ProtocolCheck"/> for this bench.</summary>
     public static Plan Plan(ProtocolFile protocol, BenchFile bench)
@@ -35,7 +35,7 @@ public static class Planner
                     Index = steps.Count,
                     Leg = number,
                     Direction = direction,
-                    EstimateS = (distance / leg.RampKPerS) + (SoakOverhead * protocol.Settling.WindowS) + Math.Min(30, distance / leg.RampKPerS / 2),
+                    EstimateS = (distance / leg.RampKPerS) + (SoakOverhead * protocol.Settling.WindowS) + Math.Min(20, distance / leg.RampKPerS / 2),
                     TemperatureK = temperatureK,
                     RampKPerS = leg.RampKPerS,
                     Gate = PhysicsGate.At(temperatureK, activationEV, measureS, protocol.Settling),

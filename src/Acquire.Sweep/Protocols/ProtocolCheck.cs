@@ -77,7 +77,7 @@ public static class ProtocolCheck
 
     private static string Kelvin(double temperatureK) => QuantityText.Format(temperatureK, Dimension.Temperature);
 
-    private static string Nanometre(double lengthM) => QuantityText.Format(Math.Round(lengthM * 1e9, 3) / 1e9, Dimension.Length, "nm");
+    private static string Nanometre(double lengthM) => FormattableString.Invariant($"{Math.Round(lengthM * 1e9, 3):G9} nm");
 
     private static string Place(BenchFile bench, string key) => FormattableString.Invariant($"{bench.Source.File}:{bench.Limits.At[key].Line}");
 }

@@ -62,7 +62,7 @@ public sealed class PlannerTests
 
     [Fact]
     public void NightPlan_OnTheCryostat_TakesAboutTwelveHours() =>
-        Assert.InRange(Planner.Plan(Shipped.Protocol("germanium-night"), Shipped.Bench("germanium-cryostat")).DurationS / 3600, 10, 14);
+        Assert.InRange(Planner.Plan(Shipped.Protocol("germanium-night"), Shipped.Bench("germanium-cryostat")).DurationS / 3600, 11, 15);
 
     [Fact]
     public void ExpectedConductance_WithoutDopingGuess_IsTheIntrinsicOne()
