@@ -57,7 +57,7 @@ internal sealed class SimulatorProcess : IAsyncDisposable
 
     public static async Task<SimulatorProcess> StartAsync(Scratch scratch)
     {
-        var process = scratch.Start("simulate", "simulator/germanium-quick.bench.yaml", "--json");
+        var process = scratch.Start("simulate", "simulator/germanium-cryostat.bench.yaml", "--json");
         using var bound = new CancellationTokenSource(TimeSpan.FromSeconds(30));
         var line = await process.StandardOutput.ReadLineAsync(bound.Token);
         using var json = JsonDocument.Parse(line!); // the first line is the announcement; null fails the test here
