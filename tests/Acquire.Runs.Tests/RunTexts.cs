@@ -21,9 +21,19 @@ internal sealed class RunFolder : IDisposable
 
     public static RunHeader Header { get; } = new()
     {
-        RunId = "20260101T000000Z-x", Kind = "run", Title = "a test (invented)", Operator = "A. Tester", SampleId = "G-1", Material = "Ge",
-        StartUtc = new DateTimeOffset(2026, 1, 1, 18, 0, 0, TimeSpan.Zero), Software = "test", Simulated = true, Seed = 7, GeometryPerM = 8000,
-        Texts = [new("protocol", "a.protocol.yaml", "protocol: a\n")], Instruments = [new("meter", "scpi-source-meter", "SIM::meter::INSTR", "X,Y,1,1")],
+        RunId = "20260101T000000Z-x",
+        Kind = "run",
+        Title = "a test (invented)",
+        Operator = "A. Tester",
+        SampleId = "G-1",
+        Material = "Ge",
+        StartUtc = new DateTimeOffset(2026, 1, 1, 18, 0, 0, TimeSpan.Zero),
+        Software = "test",
+        Simulated = true,
+        Seed = 7,
+        GeometryPerM = 8000,
+        Texts = [new("protocol", "a.protocol.yaml", "protocol: a\n")],
+        Instruments = [new("meter", "scpi-source-meter", "SIM::meter::INSTR", "X,Y,1,1")],
     };
 
     public static Channel[] Channels { get; } = [new(1, "stage temperature", "K", "controller"), new(2, "current", "A", "meter")];
@@ -65,10 +75,34 @@ internal sealed class RunFolder : IDisposable
 
     public static PointRecord Point(int index, long us) => new()
     {
-        Index = index, Step = index, Leg = 1, Direction = -1, Light = LightState.Dark, StartUs = us - 10, EndUs = us, SetPointK = 300, StageK = 300.01, SampleK = 299.9,
-        SampleUncertaintyK = 0.01, BiasV = 0.2, CurrentPlusA = 1e-6, CurrentMinusA = -1e-6, ConductanceS = 5e-6, ConductanceUncertaintyS = 1e-9, HalfSumA = 1e-12,
-        RangeA = 1e-5, Readings = 80, SoakS = 60, SignalSettleS = 2, WavelengthM = double.NaN, IrradianceWPerM2 = double.NaN, MonitorA = double.NaN, SinceLightS = double.NaN,
-        Quality = Quality.Good, Reason = null, GatesJson = "{}",
+        Index = index,
+        Step = index,
+        Leg = 1,
+        Direction = -1,
+        Light = LightState.Dark,
+        StartUs = us - 10,
+        EndUs = us,
+        SetPointK = 300,
+        StageK = 300.01,
+        SampleK = 299.9,
+        SampleUncertaintyK = 0.01,
+        BiasV = 0.2,
+        CurrentPlusA = 1e-6,
+        CurrentMinusA = -1e-6,
+        ConductanceS = 5e-6,
+        ConductanceUncertaintyS = 1e-9,
+        HalfSumA = 1e-12,
+        RangeA = 1e-5,
+        Readings = 80,
+        SoakS = 60,
+        SignalSettleS = 2,
+        WavelengthM = double.NaN,
+        IrradianceWPerM2 = double.NaN,
+        MonitorA = double.NaN,
+        SinceLightS = double.NaN,
+        Quality = Quality.Good,
+        Reason = null,
+        GatesJson = "{}",
     };
 
     public void Dispose() => Directory.Delete(Folder, recursive: true);

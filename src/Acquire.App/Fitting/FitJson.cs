@@ -21,27 +21,39 @@ internal static class FitJson
         },
         ["window"] = fit.Window is not { } window ? null : new JsonObject
         {
-            ["from"] = window.FromK, ["to"] = window.ToK, ["unit"] = "K", ["rule"] = window.Rule, ["rejected"] = window.Rejected,
+            ["from"] = window.FromK,
+            ["to"] = window.ToK,
+            ["unit"] = "K",
+            ["rule"] = window.Rule,
+            ["rejected"] = window.Rejected,
         },
         ["activationEnergy"] = fit.ActivationEnergy is not { } energy ? null : new JsonObject
         {
-            ["value"] = Number(energy.ValueEV), ["standardUncertainty"] = Number(energy.StandardUncertaintyEV), ["unit"] = "eV",
+            ["value"] = Number(energy.ValueEV),
+            ["standardUncertainty"] = Number(energy.StandardUncertaintyEV),
+            ["unit"] = "eV",
             ["interval95"] = new JsonArray(Number(energy.Low95EV), Number(energy.High95EV)),
         },
         ["prefactor"] = fit.Prefactor is not { } prefactor ? null : new JsonObject
         {
-            ["value"] = Number(prefactor.Value), ["unit"] = prefactor.Unit, ["logStandardUncertainty"] = Number(prefactor.LogStandardUncertainty), ["correlation"] = Number(prefactor.Correlation),
+            ["value"] = Number(prefactor.Value),
+            ["unit"] = prefactor.Unit,
+            ["logStandardUncertainty"] = Number(prefactor.LogStandardUncertainty),
+            ["correlation"] = Number(prefactor.Correlation),
         },
         ["corrected"] = fit.Corrected is not { } corrected ? null : new JsonObject
         {
-            ["twice"] = Number(corrected.TwiceEV), ["standardUncertainty"] = Number(corrected.StandardUncertaintyEV),
+            ["twice"] = Number(corrected.TwiceEV),
+            ["standardUncertainty"] = Number(corrected.StandardUncertaintyEV),
             ["exponents"] = new JsonObject { ["density"] = Number(corrected.DensityExponent), ["mobility"] = Number(corrected.MobilityExponent) },
             ["expectedLinearGap"] = new JsonObject { ["value"] = Number(corrected.ExpectedLinearGapEV), ["source"] = corrected.ExpectedSource },
         },
         ["budget"] = List(fit.Budget, line => new JsonObject { ["name"] = line.Name, ["type"] = line.Type, ["contribution"] = Number(line.ContributionEV), ["unit"] = "eV" }),
         ["goodness"] = fit.Goodness is not { } goodness ? null : new JsonObject
         {
-            ["reducedChiSquare"] = Number(goodness.ReducedChiSquare), ["runsTestP"] = Number(goodness.RunsTestP), ["quadraticTermP"] = Number(goodness.QuadraticTermP),
+            ["reducedChiSquare"] = Number(goodness.ReducedChiSquare),
+            ["runsTestP"] = Number(goodness.RunsTestP),
+            ["quadraticTermP"] = Number(goodness.QuadraticTermP),
         },
         ["alternatives"] = List(fit.Alternatives, law => new JsonObject { ["law"] = law.Law, ["deltaBic"] = Number(law.DeltaBic), ["comparable"] = law.Comparable }),
         ["intrinsic"] = new JsonObject
@@ -50,7 +62,9 @@ internal static class FitJson
             ["reasons"] = List(fit.Intrinsic.Reasons, reason => JsonValue.Create(reason)),
             ["netDopingBound"] = double.IsNaN(fit.Intrinsic.NTypeBoundPerCm3) && double.IsNaN(fit.Intrinsic.PTypeBoundPerCm3) ? null : new JsonObject
             {
-                ["nType"] = Number(fit.Intrinsic.NTypeBoundPerCm3), ["pType"] = Number(fit.Intrinsic.PTypeBoundPerCm3), ["unit"] = "cm-3",
+                ["nType"] = Number(fit.Intrinsic.NTypeBoundPerCm3),
+                ["pType"] = Number(fit.Intrinsic.PTypeBoundPerCm3),
+                ["unit"] = "cm-3",
             },
             ["constants"] = fit.Intrinsic.Constants,
         },

@@ -41,9 +41,12 @@ public sealed record QuantityShape(string Description, Dimension Dimension, doub
             return new() { ["type"] = "string", ["pattern"] = pattern };
         }
 
-        return new() { ["anyOf"] = new JsonArray(
+        return new()
+        {
+            ["anyOf"] = new JsonArray(
             new JsonObject { ["type"] = "number" },
-            new JsonObject { ["type"] = "string", ["pattern"] = $"^ *{PlainNumber.Pattern}( *%| +({units}))? *$" }) };
+            new JsonObject { ["type"] = "string", ["pattern"] = $"^ *{PlainNumber.Pattern}( *%| +({units}))? *$" })
+        };
     }
 
     private string ExampleOr(string symbols) =>

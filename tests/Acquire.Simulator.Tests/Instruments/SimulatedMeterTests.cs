@@ -172,8 +172,15 @@ public sealed class SimulatedMeterTests
         Holder = twin.Holder with { ColdEndK = 295 },
         Meter = change(twin.Meter with
         {
-            Offset = 0, WhiteNoise = 0, FlickerNoise = 0, ShotNoise = 0, LinePickUpA = 0, RangeGlitch = 0, VoltageNoiseV = 0,
-            Resolution = 1e-8, CableF = 1e-12,
+            Offset = 0,
+            WhiteNoise = 0,
+            FlickerNoise = 0,
+            ShotNoise = 0,
+            LinePickUpA = 0,
+            RangeGlitch = 0,
+            VoltageNoiseV = 0,
+            Resolution = 1e-8,
+            CableF = 1e-12,
         }),
     });
 

@@ -169,14 +169,31 @@ public sealed class EngineUnderFaultTests : IAsyncDisposable
 
     private static GoToStep GoTo(double temperatureK, double windowS = 20, TimeOutPolicy policy = TimeOutPolicy.Flag) => new()
     {
-        Index = 0, Leg = 1, Direction = 1, EstimateS = 60, TemperatureK = temperatureK, RampKPerS = 0.1,
+        Index = 0,
+        Leg = 1,
+        Direction = 1,
+        EstimateS = 60,
+        TemperatureK = temperatureK,
+        RampKPerS = 0.1,
         Gate = new(0.15, 0.001, windowS, 120, policy, "explicit"),
     };
 
     private static MeasureStep Dark(LightState light = LightState.Dark) => new()
     {
-        Index = 1, Leg = 1, Direction = 1, EstimateS = 30, TemperatureK = 310, Light = light, BiasV = 0.2, Reversals = 2, Readings = 10,
-        IntegrationCycles = 5, ExpectedConductanceS = 1e-5, SettledRelative = 0.002, SettledWindow = 5, SettleTimeOutS = 300,
+        Index = 1,
+        Leg = 1,
+        Direction = 1,
+        EstimateS = 30,
+        TemperatureK = 310,
+        Light = light,
+        BiasV = 0.2,
+        Reversals = 2,
+        Readings = 10,
+        IntegrationCycles = 5,
+        ExpectedConductanceS = 1e-5,
+        SettledRelative = 0.002,
+        SettledWindow = 5,
+        SettleTimeOutS = 300,
     };
 
     private static MeasureStep Lit() => Dark(LightState.Lit) with { WavelengthM = 940e-9, IrradianceWPerM2 = 10 };
@@ -192,9 +209,15 @@ public sealed class EngineUnderFaultTests : IAsyncDisposable
     {
         using var engine = new SweepEngine(new EngineSetup
         {
-            Instruments = new BenchInstruments(_loop, _meter, _lamp), Bench = InventedBench.File, Plan = new Plan("p", steps, []),
-            Interlocks = InterlockTable.For(InventedBench.File), Recorder = _record, Loop = loop, OriginTimestamp = _time.Clock.GetTimestamp(),
-            LinkClock = _time.Clock, Log = NullLogger.Instance,
+            Instruments = new BenchInstruments(_loop, _meter, _lamp),
+            Bench = InventedBench.File,
+            Plan = new Plan("p", steps, []),
+            Interlocks = InterlockTable.For(InventedBench.File),
+            Recorder = _record,
+            Loop = loop,
+            OriginTimestamp = _time.Clock.GetTimestamp(),
+            LinkClock = _time.Clock,
+            Log = NullLogger.Instance,
         });
         string? end = null;
         _time.Run(async () =>

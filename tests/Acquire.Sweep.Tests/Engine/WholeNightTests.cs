@@ -53,8 +53,15 @@ public sealed class WholeNightTests
 
             using var engine = new SweepEngine(new EngineSetup
             {
-                Instruments = instruments, Bench = bench, Plan = Planner.Plan(Shipped.Protocol("germanium-quick"), bench), Interlocks = InterlockTable.For(bench),
-                Recorder = record, Loop = time, OriginTimestamp = time.Clock.GetTimestamp(), LinkClock = time.Clock, Log = NullLogger.Instance,
+                Instruments = instruments,
+                Bench = bench,
+                Plan = Planner.Plan(Shipped.Protocol("germanium-quick"), bench),
+                Interlocks = InterlockTable.For(bench),
+                Recorder = record,
+                Loop = time,
+                OriginTimestamp = time.Clock.GetTimestamp(),
+                LinkClock = time.Clock,
+                Log = NullLogger.Instance,
             });
             outcome = await engine.RunAsync(CancellationToken.None);
         });

@@ -18,7 +18,8 @@ public class SerialLinkTests
         {
             while (terminal.ReadLine() is { Length: > 0 } line)
                 if (answer(line) is { } text) terminal.Send(text);
-        }) { IsBackground = true };
+        })
+        { IsBackground = true };
         thread.Start();
         return thread;
     }
