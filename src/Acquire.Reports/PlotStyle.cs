@@ -49,7 +49,7 @@ internal static class PlotStyle
 
         var markers = plot.Add.Markers(x, y);
         markers.MarkerShape = shape;
-        markers.MarkerSize = 8;
+        markers.MarkerSize = shape is MarkerShape.OpenSquare or MarkerShape.OpenDiamond ? 13 : 8; // hollow ones around filled ones
         markers.Color = colour;
         markers.MarkerLineWidth = 1.5f;
         markers.LegendText = what.Legend;
@@ -92,6 +92,9 @@ internal static class PlotStyle
         plot.ShowLegend(legend);
         plot.Axes.Margins(0.05, 0.12);
         plot.Axes.AutoScale();
+        // The top axis has limits of its own: they follow the bottom's, so that kelvin stand above their reciprocals.
+        plot.Axes.Top.Min = plot.Axes.Bottom.Min;
+        plot.Axes.Top.Max = plot.Axes.Bottom.Max;
         return plot;
     }
 }

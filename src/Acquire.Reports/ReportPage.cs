@@ -102,21 +102,24 @@ internal sealed partial class ReportPage(RunReader run, IReadOnlyList<PointRecor
         }
 
         var svg = Fonts().Replace(plot.Plot.GetSvgXml(PlotStyle.Width, PlotStyle.Height), "font-family=\"sans-serif\"");
+        // Six drawings in one page may not share the names of their clip paths: the first would clip them all.
+        svg = svg.Replace("id=\"", $"id=\"{plot.Name}-", StringComparison.Ordinal).Replace("url(#", $"url(#{plot.Name}-", StringComparison.Ordinal)
+            .Replace("href=\"#", $"href=\"#{plot.Name}-", StringComparison.Ordinal);
         var start = svg.IndexOf("<svg", StringComparison.Ordinal);
         _html.Append("<figure role=\"img\" aria-label=\"").Append(Text(plot.Alternative)).Append("\">\n").Append(svg[start..]).Append("\n<figcaption>").Append(Text(plot.Alternative)).Append("</figcaption>\n</figure>\n");
     }
 
     private void PointTable()
     {
-        _html.Append("<h2>Points</h2>\n<details open>\n<summary>").Append(Number($"{points.Count} points")).Append("</summary>\n<table>\n<tr><th>no.</th><th>leg</th><th>light</th><th>T / K</th><th>u(T) / K</th><th>G / S</th><th>u(G) / S</th><th>background / A</th><th>range / A</th><th>soak / s</th><th>drift / (mK/min)</th><th>gate met</th><th>remarks</th></tr>\n");
+        _html.Append("<h2>Points</h2>\n<details open>\n<summary>").Append(Number($"{points.Count} points")).Append("</summary>\n<table>\n<tr><th>no.</th><th>leg</th><th>light</th><th>T / K</th><th>u(T) / K</th><th>G / S</th><th>u(G) / S</th><th>background / A</th><th>range / A</th><th>soak / s</th><th>drift / (mK/min)</th><th>off target / K</th><th>gate met</th><th>remarks</th></tr>\n");
         foreach (var point in points)
         {
-            var (met, drift) = Gates(point.GatesJson);
+            var (met, drift, distance) = Gates(point.GatesJson);
             string[] cells =
             [
                 Number($"{point.Index}"), Number($"{point.Leg}"), point.Light switch { LightState.Lit => "lit", LightState.DarkAfter => "dark after", _ => "dark" },
                 Number($"{point.SampleK:F3}"), Number($"{point.SampleUncertaintyK:G2}"), Number($"{point.ConductanceS:G6}"), Number($"{point.ConductanceUncertaintyS:G2}"),
-                Number($"{point.HalfSumA:G3}"), Number($"{point.RangeA:G2}"), Number($"{point.SoakS:F0}"), drift, met, point.Reason ?? "",
+                Number($"{point.HalfSumA:G3}"), Number($"{point.RangeA:G2}"), Number($"{point.SoakS:F0}"), drift, distance, met, point.Reason ?? (point.Quality == Bench.Readings.Quality.Good ? "" : point.Quality.ToString()),
             ];
             _html.Append("<tr>").AppendJoin("", cells.Select(cell => $"<td>{Text(cell.Replace("NaN", "", StringComparison.Ordinal))}</td>")).Append("</tr>\n");
         }
@@ -124,18 +127,19 @@ internal sealed partial class ReportPage(RunReader run, IReadOnlyList<PointRecor
         _html.Append("</table>\n</details>\n");
     }
 
-    private static (string Met, string Drift) Gates(string gates)
+    private static (string Met, string Drift, string Distance) Gates(string gates)
     {
         try
         {
             using var json = JsonDocument.Parse(gates);
             var met = json.RootElement.TryGetProperty("met", out var found) ? found.ValueKind == JsonValueKind.True ? "yes" : "no" : "";
             var drift = json.RootElement.TryGetProperty("achieved_drift_K_per_s", out var number) && number.ValueKind == JsonValueKind.Number ? Number($"{number.GetDouble() * 60_000:F1}") : "";
-            return (met, drift);
+            var distance = json.RootElement.TryGetProperty("achieved_distance_K", out var off) && off.ValueKind == JsonValueKind.Number ? Number($"{off.GetDouble():F3}") : "";
+            return (met, drift, distance);
         }
         catch (JsonException)
         {
-            return ("", "");
+            return ("", "", "");
         }
     }
 
@@ -149,7 +153,7 @@ internal sealed partial class ReportPage(RunReader run, IReadOnlyList<PointRecor
     {
         Table("Record",
         [
-            ("file", Path.GetFileName(run.Path)), ("chain head (SHA-256)", seal.ChainHead), ("verified", seal.Sound ? "sound" : "damaged: " + string.Join("; ", seal.Findings)),
+            ("file", Path.GetFileName(run.Path)), ("chain head (SHA-256)", seal.ChainHead), ("verified", seal.Sound ? "sound, no findings" : "damaged: " + string.Join("; ", seal.Findings)),
         ]);
         if (!hasFonts)
         {

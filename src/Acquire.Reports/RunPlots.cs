@@ -17,7 +17,7 @@ internal sealed record ReportPlot(string Name, string Title, string Alternative,
 /// <summary>Draws the plots of a run.</summary>
 internal static class RunPlots
 {
-    private const double InverseBoltzmann = 1 / 8.617333262145e-5;
+    private const double InverseBoltzmann = 1 / Physics.SI.BoltzmannEVPerK;
     private const int MostTimePoints = 4000;
 
     public static IReadOnlyList<ReportPlot> Draw(RunReader run, IReadOnlyList<PointRecord> points, FitResult? fit)
