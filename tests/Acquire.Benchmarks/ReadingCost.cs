@@ -21,13 +21,14 @@ internal static class ReadingCost
     public static Figure Measure()
     {
         using var responder = new Responder(Answer);
+        using var other = new Responder(Answer); // one client at a time each, as instruments are
         using var loop = new RealLoop(TimeProvider.System);
         Figure? figure = null;
-        loop.Run(async () => figure = await MeasureAsync(responder.Port));
+        loop.Run(async () => figure = await MeasureAsync(responder.Port, other.Port));
         return figure!; // the loop has run to its end
     }
 
-    private static async Task<Figure> MeasureAsync(int port)
+    private static async Task<Figure> MeasureAsync(int port, int barePort)
     {
         var bench = BenchFile.Parse(new SourceText("bench", BenchText(port))).Value!;
         var instruments = InstrumentFactory.Open(bench, new LinkFactory(), DriverCatalogue.Shipped).Value!;
@@ -52,7 +53,7 @@ internal static class ReadingCost
                 engine[i] = clock.GetElapsedTime(start).TotalMicroseconds;
             }
 
-            var anchor = await BareExchange.RunAsync(port, question, Block, CancellationToken.None);
+            var anchor = await BareExchange.RunAsync(barePort, question, Block, CancellationToken.None);
             if (block >= 2)
             {
                 ours.AddRange(engine);
