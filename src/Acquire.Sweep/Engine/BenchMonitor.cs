@@ -177,7 +177,7 @@ public sealed class BenchMonitor
         var saturated = !poll.HeaterW.IsGood || poll.HeaterW.Value >= SaturatedFraction * _setup.Bench.Limits.HeaterPowerW;
         Last = new(nowS, poll.StageK.IsGood ? poll.StageK.Value : double.NaN, poll.SampleK.IsGood ? poll.SampleK.Value : double.NaN, saturated);
         History.Add(nowS, Last.StageK, Last.SampleK, LightMonitorA);
-        Judge(newSample: true);
+        Judge(newSample: Answered(poll.StageK)); // an unanswered poll is no new sample: the old one ages
         Wake();
     }
 

@@ -121,9 +121,9 @@ public sealed class OutputAuthority(
 
     private async Task<bool> MakeSafeOnceAsync(string because)
     {
-        log.Event("safe", Severity.Note, "engine", $"Making the bench safe: {because}");
         using var bound = new CancellationTokenSource(MakeSafeBound, linkClock);
-        var tasks = instruments.All.Select(instrument => MakeSafeAsync(instrument, bound.Token)).ToList();
+        var tasks = instruments.All.Select(instrument => MakeSafeAsync(instrument, bound.Token)).ToList(); // first act, then write about it
+        log.Event("safe", Severity.Note, "engine", $"Making the bench safe: {because}");
         var confirmed = await Task.WhenAll(tasks);
         LightIsOn = false;
         var all = Array.TrueForAll(confirmed, one => one);

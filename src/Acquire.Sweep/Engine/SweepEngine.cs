@@ -60,13 +60,18 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
         await LookOnceMoreAsync();
         monitorEnd.Cancel(); // not CancelAsync, which passes through the thread pool
         await monitoring;
+        if (_fault is { } fault && outcome.State == "completed")
+        {
+            outcome = new("failed", fault);
+        }
+
         if (!safe && outcome.State == "completed")
         {
             outcome = new("failed", "The plan is done, but not every instrument confirmed that it is off. Check the bench by hand.");
         }
 
         _log.Event("state", outcome.State == "completed" ? Severity.Note : Severity.Warning, "engine", $"The run ends: {outcome.State}. {outcome.Reason}");
-        await _setup.Recorder.SealAsync(outcome.State, CancellationToken.None);
+        await SealAsync(outcome.State);
         _state = "ended: " + outcome.State;
         return outcome;
     }
@@ -130,6 +135,18 @@ public sealed class SweepEngine : IEngineCommands, IDisposable
 
     /// <inheritdoc/>
     public void Dispose() => _sequenceEnd.Dispose();
+
+    private async Task SealAsync(string state)
+    {
+        try
+        {
+            await _setup.Recorder.SealAsync(state, CancellationToken.None);
+        }
+        catch (Exception fault)
+        {
+            _setup.Log.Log(Microsoft.Extensions.Logging.LogLevel.Error, default, fault, fault, (_, error) => "The record could not be sealed: " + error?.Message);
+        }
+    }
 
     /// <summary>The monitor under watch: when it ends by itself the bench is made safe, since nobody looks at it any more.</summary>
     private async Task WatchAsync(CancellationToken cancellation)

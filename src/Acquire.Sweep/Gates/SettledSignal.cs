@@ -2,8 +2,9 @@ namespace Acquire.Sweep.Gates;
 
 /// <summary>Whether a signal has settled: the means of two adjacent windows agree, twice in a row.</summary>
 /// <remarks>
-/// Accepts when |m2 - m1| &lt;= max(2 SEM, relative * |m2|), SEM the standard error of the difference from the scatter inside both windows.
-/// and what an exponential through the last three means would still bring is as small. Needs at least three windows. A value that is not a number starts it again. A recommended default of the field, common practice.
+/// Accepts when |m2 - m1| &lt;= max(2 SEM, relative * |m2|), SEM the standard error of the difference from the scatter inside both windows,
+/// and when what an exponential through the last three means would still bring is at most the relative bound too. Needs three windows.
+/// A value that is not a number starts it again. Window test: common practice; extrapolation: Aitken 1926, Proc. R. Soc. Edinburgh 46, 289.
 /// </remarks>
 public sealed class SettledSignal(int window, double relative)
 {

@@ -167,6 +167,33 @@ public sealed class EngineUnderFaultTests : IAsyncDisposable
         Assert.True(_loop.Polls > 120 && end == "completed", $"the monitor stopped after {_loop.Polls} polls; heater {_loop.HeaterOn}; outcome {end ?? "none"}");
     }
 
+    [Fact]
+    public void Recorder_ThatThrowsAtEveryEvent_DoesNotKeepTheHeaterOn()
+    {
+        _record.OnEvent = _ =>
+        {
+            if (_loop.HeaterOn)
+            {
+                throw new InvalidOperationException("the recorder broke its contract");
+            }
+        };
+        var end = RunBounded(600, GoTo(310), Dark());
+        Assert.False(_loop.HeaterOn || _meter.OutputOn, $"heater {_loop.HeaterOn}, bias {_meter.OutputOn}, made safe {_loop.MadeSafe} times; outcome {end ?? "none"}");
+    }
+
+    [Fact]
+    public void OneHotGlitch_FollowedByAnUnansweredPoll_TripsNothing()
+    {
+        var timedOut = Measured.Bad(Quality.TimedOut);
+        _loop.OnRead = (poll, targetK, _) => new(poll switch
+        {
+            10 => FakeLoop.Steady(targetK) with { StageK = Measured.Good(460) },
+            11 => new LoopReading(timedOut, timedOut, timedOut, timedOut),
+            _ => FakeLoop.Steady(targetK),
+        });
+        Assert.True(Run(GoTo(310)) == "completed", Trips());
+    }
+
     private static GoToStep GoTo(double temperatureK, double windowS = 20, TimeOutPolicy policy = TimeOutPolicy.Flag) => new()
     {
         Index = 0,

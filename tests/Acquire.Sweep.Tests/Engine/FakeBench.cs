@@ -172,7 +172,14 @@ internal sealed class MemoryRecorder : IRunRecorder
 
     public void Append(in Reading reading) => Readings.Add(reading);
 
-    public void Append(RunEvent record) => Events.Add(record);
+    /// <summary>Called before an event is kept; may throw, as a recorder with a broken contract does.</summary>
+    public Action<RunEvent>? OnEvent { get; set; }
+
+    public void Append(RunEvent record)
+    {
+        OnEvent?.Invoke(record);
+        Events.Add(record);
+    }
 
     public void Append(PointRecord point) => Points.Add(point);
 
