@@ -156,7 +156,7 @@ internal static class RunPlots
             drawn |= hours.Length > 1;
         }
 
-        return drawn ? PlotStyle.Finish(plot, Alignment.UpperRight) : null;
+        return drawn ? PlotStyle.Finish(plot, Alignment.UpperCenter) : null;
     }
 
     private static Plot? Current(RunReader run)
@@ -173,7 +173,7 @@ internal static class RunPlots
         markers.MarkerSize = 3;
         markers.Color = Colors.Black;
         markers.LegendText = "good readings";
-        return PlotStyle.Finish(plot, Alignment.UpperRight);
+        return PlotStyle.Finish(plot, Alignment.UpperCenter);
     }
 
     /// <summary>Good readings of a channel against hours, thinned evenly so that a plot of a long night stays small.</summary>

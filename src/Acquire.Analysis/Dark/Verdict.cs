@@ -42,7 +42,8 @@ internal static class Verdict
         }
         else
         {
-            reasons.Add("the geometry is unknown, so the conductivity itself was not compared");
+            agrees = false;
+            reasons.Add("the geometry is unknown, so the conductivity itself was not compared, and no pass is given");
         }
 
         reasons.Add("conductivity sees net active doping only; compensation can hide more");
@@ -56,8 +57,8 @@ internal static class Verdict
             .Select(leg => leg.Average(i => context.Curve.Y[i] - context.Window.Line.At(context.Curve.X[i]))).ToList();
         if (byLeg.Count < 2)
         {
-            reasons.Add("one leg only: hysteresis was not tested");
-            return true;
+            reasons.Add("one leg only: hysteresis was not tested, so no pass");
+            return false;
         }
 
         var apart = byLeg.Max() - byLeg.Min();

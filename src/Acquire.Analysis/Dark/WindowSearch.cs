@@ -14,7 +14,7 @@ internal sealed record CandidateWindow(int From, int To, LineFit Line, double Cu
 /// Candidates  every contiguous set of six or more points that ends at the hottest usable point, since the intrinsic side is the hot one
 /// Flattened   with a material, ln G less ln sigma_i(T) is tested, so that the known curvature of gap and prefactors does not count;
 ///             without one, ln G itself
-/// Rejected    when the slope energy is not above 3 kT (not activated); when the flattened slope changes across the window by more than 2 % of the energy with
+/// Rejected    when the slope energy is not above 3 kT (not activated); when the flattened slope changes across the window by more than 1 % of the energy with
 ///             p below 1 % (two regimes); when the residuals' runs are improbable (|Z| above 1.96) and larger than 0.5 %; when ln G spans less than 0.8
 /// Chosen      the longest that is left. A break point is never used as an edge
 /// Source      rules of common practice; runs test Wald and Wolfowitz 1940; nested F test
@@ -24,7 +24,7 @@ internal sealed class WindowSearch(DarkCurve curve, Material? material)
     public const int FewestPoints = 6;
     public const double WantedSpan = 2.3;
     private const double LeastSpan = 0.8;
-    private const double MostSlopeChange = 0.02;
+    private const double MostSlopeChange = 0.01;
     private const double QuadraticLevel = 0.01;
     private const double RunsLimit = 1.96;
     private const double HarmlessResidual = 0.005;

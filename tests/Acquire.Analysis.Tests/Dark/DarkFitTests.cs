@@ -92,6 +92,16 @@ public sealed class DarkFitTests
     }
 
     [Fact]
+    public void Verdict_WithoutGeometryOrWithOneLeg_IsAtMostInconclusive()
+    {
+        var points = Intrinsic(Material.Ge, 0, 290, 350, 20, 0.001).Select(point => point with { ConductanceS = point.ConductanceS / 8000 }).ToList();
+        var settings = new FitSettings { Material = Material.Ge, CommonTemperatureUncertaintyK = 0.1, GeometryPerM = 8000 };
+        Assert.Equal("pass", DarkFit.Fit(points, settings).Intrinsic.Verdict);
+        Assert.Equal("inconclusive", DarkFit.Fit(points, settings with { GeometryPerM = double.NaN }).Intrinsic.Verdict);
+        Assert.Equal("inconclusive", DarkFit.Fit([.. points.Select(point => point with { Leg = 1 })], settings).Intrinsic.Verdict);
+    }
+
+    [Fact]
     public void Exclusions_KeepTheirReasons()
     {
         var points = Intrinsic(Material.Ge, 0, 300, 340, 12).ToList();
