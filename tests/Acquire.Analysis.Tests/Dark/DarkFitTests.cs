@@ -94,7 +94,7 @@ public sealed class DarkFitTests
     [Fact]
     public void Verdict_WithoutGeometryOrWithOneLeg_IsAtMostInconclusive()
     {
-        var points = Intrinsic(Material.Ge, 0, 290, 350, 20, 0.001).Select(point => point with { ConductanceS = point.ConductanceS / 8000 }).ToList();
+        var points = Intrinsic(Material.Ge, 0, 290, 350, 20, 0.001).Select(point => point with { ConductanceS = point.ConductanceS / 8000, ConductanceUncertaintyS = point.ConductanceUncertaintyS / 8000 }).ToList();
         var settings = new FitSettings { Material = Material.Ge, CommonTemperatureUncertaintyK = 0.1, GeometryPerM = 8000 };
         Assert.Equal("pass", DarkFit.Fit(points, settings).Intrinsic.Verdict);
         Assert.Equal("inconclusive", DarkFit.Fit(points, settings with { GeometryPerM = double.NaN }).Intrinsic.Verdict);
