@@ -92,9 +92,6 @@ internal static class PlotStyle
         plot.ShowLegend(legend);
         plot.Axes.Margins(0.05, 0.12);
         plot.Axes.AutoScale();
-        // The top axis has limits of its own: they follow the bottom's, so that kelvin stand above their reciprocals.
-        plot.Axes.Top.Min = plot.Axes.Bottom.Min;
-        plot.Axes.Top.Max = plot.Axes.Bottom.Max;
         return plot;
     }
 }

@@ -58,8 +58,9 @@ internal static class RunPlots
                 (Invariant($"fit, {energy.ValueEV:F4} eV"), LinePattern.Solid, "#b00020"));
         }
 
+        PlotStyle.Finish(plot, Alignment.UpperRight);
         TemperatureAxis(plot, usable.Min(point => point.TemperatureK), usable.Max(point => point.TemperatureK));
-        return PlotStyle.Finish(plot, Alignment.UpperRight);
+        return plot;
     }
 
     /// <summary>Temperatures in kelvin on the top axis, at round values.</summary>
@@ -69,14 +70,14 @@ internal static class RunPlots
         var ticks = new ScottPlot.TickGenerators.NumericManual();
         for (var temperatureK = Math.Ceiling(fromK / step) * step; temperatureK <= toK + 1e-9; temperatureK += step)
         {
-            ticks.AddMajor(1000 / temperatureK, temperatureK.ToString("F0", CultureInfo.InvariantCulture));
+            ticks.AddMajor(1000 / temperatureK, temperatureK.ToString("F0", CultureInfo.InvariantCulture) + " K");
         }
 
         plot.Axes.Top.TickGenerator = ticks;
         plot.Axes.Top.TickLabelStyle.FontSize = 13;
-        plot.Axes.Top.Label.Text = "T / K";
-        plot.Axes.Top.Label.FontSize = 15;
-        plot.Axes.Top.IsVisible = true;
+        // The top axis has limits of its own: they follow the bottom's, so that kelvin stand above their reciprocals.
+        plot.Axes.Top.Min = plot.Axes.Bottom.Min;
+        plot.Axes.Top.Max = plot.Axes.Bottom.Max;
     }
 
     private static Plot? Residuals(IReadOnlyList<ConductancePoint> dark, FitResult? fit)
