@@ -7,20 +7,28 @@ namespace Acquire.Control;
 /// <summary>A console's end of the control socket. Never throws because an engine went away: it says so.</summary>
 public sealed class ControlClient : IAsyncDisposable
 {
-    private static readonly TimeSpan AnswerBound = TimeSpan.FromSeconds(10);
+    private const int MostLateAnswers = 64;
     private readonly NetworkStream _stream;
-    private readonly StreamReader _reader;
+    private readonly LineReader _reader;
     private int _id;
 
     private ControlClient(Socket socket)
     {
         _stream = new NetworkStream(socket, ownsSocket: true);
-        _reader = new StreamReader(_stream, new UTF8Encoding(false));
+        _reader = new LineReader(_stream);
     }
+
+    /// <summary>Longest wait for an answer.</summary>
+    internal TimeSpan AnswerBound { get; set; } = TimeSpan.FromSeconds(10);
 
     /// <summary>Connects and compares versions; the client, or why there is none.</summary>
     public static async Task<(ControlClient? Client, string? Problem)> ConnectAsync(string socketPath, CancellationToken cancellation)
     {
+        if (ControlSockets.Refusal(socketPath) is { } refusal)
+        {
+            return (null, refusal);
+        }
+
         var socket = await ControlSockets.ConnectAsync(socketPath, cancellation).ConfigureAwait(false);
         if (socket is null)
         {
@@ -48,7 +56,7 @@ public sealed class ControlClient : IAsyncDisposable
         var answer = await AskAsync(verb, new RpcParameters(null, operatorName, reason), cancellation).ConfigureAwait(false);
         return answer?.Result is { } result && result.Deserialize(ControlJson.Default.ControlOutcome) is { } outcome
             ? outcome
-            : new(false, answer?.Error?.Message ?? "The engine did not answer: it has ended, or hangs. Look at the bench.");
+            : new(false, answer?.Error?.Message ?? "The engine did not answer in time: it has ended, or hangs. The command may still be carried out. Look at the bench.");
     }
 
     /// <inheritdoc/>
@@ -66,15 +74,34 @@ public sealed class ControlClient : IAsyncDisposable
         {
             var request = new RpcRequest("2.0", JsonSerializer.SerializeToElement(++_id, ControlIds.Default.Int32), method, parameters);
             await _stream.WriteAsync(Encoding.UTF8.GetBytes(JsonSerializer.Serialize(request, ControlJson.Default.RpcRequest) + "\n"), bound.Token).ConfigureAwait(false);
-            return await ControlSockets.ReadLineAsync(_reader, bound.Token).ConfigureAwait(false) is { } line
-                ? JsonSerializer.Deserialize(line, ControlJson.Default.RpcResponse)
-                : null;
+            return await AnswerToAsync(_id, bound.Token).ConfigureAwait(false);
         }
         catch (Exception gone) when (gone is IOException or InvalidDataException or JsonException or SocketException or ObjectDisposedException
             || (gone is OperationCanceledException && !cancellation.IsCancellationRequested))
         {
             return null;
         }
+    }
+
+    /// <summary>The answer to one request. A late answer to an earlier one is passed over: it must never stand for this one.</summary>
+    private async Task<RpcResponse?> AnswerToAsync(int id, CancellationToken cancellation)
+    {
+        for (var late = 0; late < MostLateAnswers; late++)
+        {
+            if (await _reader.ReadAsync(cancellation).ConfigureAwait(false) is not { } line
+                || JsonSerializer.Deserialize(line, ControlJson.Default.RpcResponse) is not { } answer)
+            {
+                return null;
+            }
+
+            var isOurs = answer.Id is { ValueKind: JsonValueKind.Number } number && number.TryGetInt32(out var found) && found == id;
+            if (isOurs || (answer.Error is not null && answer.Id is null or { ValueKind: JsonValueKind.Null }))
+            {
+                return answer; // an error without a number speaks of the connection itself
+            }
+        }
+
+        return null;
     }
 }
 

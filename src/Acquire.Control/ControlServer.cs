@@ -11,7 +11,7 @@ public sealed class ControlServer : IAsyncDisposable
     private readonly string _path;
     private readonly RequestHandler _handler;
     private readonly CancellationTokenSource _end = new();
-    private readonly SemaphoreSlim _places = new(MostClients);
+    private int _clients;
     private readonly Task _accepting;
 
     private ControlServer(Socket listener, string path, RequestHandler handler)
@@ -25,6 +25,11 @@ public sealed class ControlServer : IAsyncDisposable
     /// <summary>Listens. A socket file that nobody listens on is removed; one that somebody listens on is an <see cref="IOException"/>.</summary>
     public static ControlServer Start(string socketPath, IControlTarget target, SynchronizationContext loop)
     {
+        if (ControlSockets.Refusal(socketPath) is { } refusal)
+        {
+            throw new IOException(refusal);
+        }
+
         var listener = new Socket(AddressFamily.Unix, SocketType.Stream, ProtocolType.Unspecified);
         try
         {
@@ -57,11 +62,15 @@ public sealed class ControlServer : IAsyncDisposable
         await _accepting.ConfigureAwait(false);
         File.Delete(_path);
         _end.Dispose();
-        _places.Dispose();
     }
 
     private static void RemoveStale(string path)
     {
+        if (new FileInfo(path).Length > 0)
+        {
+            throw new IOException($"{path}: this is a file and no socket; it is left alone. Move it away.");
+        }
+
         using var probe = new Socket(AddressFamily.Unix, SocketType.Stream, ProtocolType.Unspecified);
         try
         {
@@ -83,10 +92,9 @@ public sealed class ControlServer : IAsyncDisposable
         {
             while (!_end.IsCancellationRequested)
             {
-                await _places.WaitAsync(_end.Token).ConfigureAwait(false);
                 var client = await _listener.AcceptAsync(_end.Token).ConfigureAwait(false);
                 clients.RemoveAll(task => task.IsCompleted);
-                clients.Add(ServeAsync(client));
+                clients.Add(Interlocked.Increment(ref _clients) <= MostClients ? ServeAsync(client) : TurnAwayAsync(client));
             }
         }
         catch (Exception ended) when (ended is OperationCanceledException or SocketException or ObjectDisposedException)
@@ -102,16 +110,19 @@ public sealed class ControlServer : IAsyncDisposable
         try
         {
             using var stream = new NetworkStream(client, ownsSocket: true);
-            using var reader = new StreamReader(stream, new UTF8Encoding(false));
-            while (await ControlSockets.ReadLineAsync(reader, _end.Token).ConfigureAwait(false) is { } line)
+            using var reader = new LineReader(stream);
+            try
             {
-                var answer = Encoding.UTF8.GetBytes(await _handler.AnswerAsync(line, _end.Token).ConfigureAwait(false) + "\n");
-                await stream.WriteAsync(answer, _end.Token).ConfigureAwait(false);
+                while (await reader.ReadAsync(_end.Token).ConfigureAwait(false) is { } line)
+                {
+                    await SayAsync(stream, await _handler.AnswerAsync(line, _end.Token).ConfigureAwait(false)).ConfigureAwait(false);
+                }
             }
-        }
-        catch (InvalidDataException)
-        {
-            // A line beyond every message of ours: the client is not one of ours.
+            catch (InvalidDataException)
+            {
+                // A line beyond every message of ours: the client is not one of ours.
+                await SayAsync(stream, RequestHandler.TooLong()).ConfigureAwait(false);
+            }
         }
         catch (Exception gone) when (gone is IOException or OperationCanceledException or SocketException or ObjectDisposedException)
         {
@@ -120,14 +131,28 @@ public sealed class ControlServer : IAsyncDisposable
         finally
         {
             client.Dispose();
-            try
-            {
-                _places.Release();
-            }
-            catch (ObjectDisposedException)
-            {
-                // The server has ended meanwhile.
-            }
+            Interlocked.Decrement(ref _clients);
         }
     }
+
+    private async Task TurnAwayAsync(Socket client)
+    {
+        try
+        {
+            using var stream = new NetworkStream(client, ownsSocket: true);
+            await SayAsync(stream, RequestHandler.NoPlace(MostClients)).ConfigureAwait(false);
+        }
+        catch (Exception gone) when (gone is IOException or OperationCanceledException or SocketException or ObjectDisposedException)
+        {
+            // The client left, or the server ends.
+        }
+        finally
+        {
+            client.Dispose();
+            Interlocked.Decrement(ref _clients);
+        }
+    }
+
+    private async Task SayAsync(NetworkStream stream, string line) =>
+        await stream.WriteAsync(Encoding.UTF8.GetBytes(line + "\n"), _end.Token).ConfigureAwait(false);
 }

@@ -10,35 +10,16 @@ public static class ControlSockets
     /// <summary>Version of the protocol; hello compares it.</summary>
     public const int Version = 1;
 
-    /// <summary>Longest line [characters].</summary>
-    internal const int LongestLine = 64 * 1024;
+    /// <summary>Longest path of a socket [bytes]: what every system takes, less a reserve.</summary>
+    internal const int LongestPath = 100;
 
     /// <summary>The socket of a run in a private folder; short, because a socket's path may have 107 bytes.</summary>
     public static string PathFor(string runtimeFolder, string runId) =>
         Path.Combine(runtimeFolder, Convert.ToHexStringLower(SHA256.HashData(Encoding.UTF8.GetBytes(runId)))[..12] + ".sock");
 
-    /// <summary>Reads one line, bounded; null at the end of the stream, <see cref="InvalidDataException"/> when it is too long.</summary>
-    internal static async Task<string?> ReadLineAsync(StreamReader reader, CancellationToken cancellation)
-    {
-        var line = new StringBuilder();
-        var one = new char[1];
-        while (await reader.ReadAsync(one, cancellation).ConfigureAwait(false) == 1)
-        {
-            if (one[0] == '\n')
-            {
-                return line.ToString();
-            }
-
-            if (line.Length >= LongestLine)
-            {
-                throw new InvalidDataException("line too long");
-            }
-
-            line.Append(one[0]);
-        }
-
-        return line.Length == 0 ? null : line.ToString();
-    }
+    /// <summary>Why a path cannot be a socket's, or null.</summary>
+    internal static string? Refusal(string path) => Encoding.UTF8.GetByteCount(path) <= LongestPath ? null
+        : FormattableString.Invariant($"The control socket's path is too long: found {Encoding.UTF8.GetByteCount(path)} bytes, allowed {LongestPath} ({path}). Set XDG_RUNTIME_DIR to a shorter folder.");
 
     /// <summary>Connects; null when nobody listens.</summary>
     internal static async Task<Socket?> ConnectAsync(string path, CancellationToken cancellation)

@@ -9,6 +9,7 @@ internal sealed class RequestHandler(IControlTarget target, SynchronizationConte
     private const int InvalidRequest = -32600;
     private const int MethodNotFound = -32601;
     private const int InvalidParameters = -32602;
+    private const int InternalError = -32603;
 
     public async Task<string> AnswerAsync(string line, CancellationToken cancellation)
     {
@@ -22,10 +23,23 @@ internal sealed class RequestHandler(IControlTarget target, SynchronizationConte
             return Error(null, ParseError, "This is not one JSON object on one line.");
         }
 
-        return request is { Jsonrpc: "2.0", Method: not null }
-            ? await MethodAsync(request, cancellation).ConfigureAwait(false)
-            : Error(request?.Id, InvalidRequest, "This is not a request of JSON-RPC 2.0: jsonrpc and method are needed.");
+        try
+        {
+            return request is { Jsonrpc: "2.0", Method: not null }
+                ? await MethodAsync(request, cancellation).ConfigureAwait(false)
+                : Error(request?.Id, InvalidRequest, "This is not a request of JSON-RPC 2.0: jsonrpc and method are needed.");
+        }
+        catch (Exception fault) when (fault is not OperationCanceledException)
+        {
+            return Error(request?.Id, InternalError, "The engine could not answer: " + fault.Message);
+        }
     }
+
+    /// <summary>What a line beyond every bound is told before the connection closes.</summary>
+    public static string TooLong() => Error(null, InvalidRequest, FormattableString.Invariant($"The line is longer than {LineReader.LongestLine} characters."));
+
+    /// <summary>What a console beyond every place is told before the connection closes.</summary>
+    public static string NoPlace(int places) => Error(null, InvalidRequest, FormattableString.Invariant($"All {places} places for consoles are taken; close one and try again."));
 
     private async Task<string> MethodAsync(RpcRequest request, CancellationToken cancellation)
     {
@@ -79,7 +93,7 @@ internal sealed class RequestHandler(IControlTarget target, SynchronizationConte
                 }
                 catch (Exception problem)
                 {
-                    done.TrySetException(new IOException("The engine could not answer: " + problem.Message, problem));
+                    done.TrySetException(problem);
                 }
             },
             null);

@@ -42,6 +42,7 @@ internal static class ReadingCost
         for (var block = 0; block < Blocks + 2; block++)
         {
             var engine = new double[Block];
+            var good = true;
             for (var i = 0; i < Block; i++)
             {
                 var start = clock.GetTimestamp();
@@ -51,6 +52,12 @@ internal static class ReadingCost
                 log.Reading(EngineChannels.Current, from, to, reading.CurrentA);
                 log.Reading(EngineChannels.Voltage, from, to, reading.VoltageV);
                 engine[i] = clock.GetElapsedTime(start).TotalMicroseconds;
+                good &= reading.CurrentA.IsGood && reading.VoltageV.IsGood;
+            }
+
+            if (!good || log.Health.Failure is not null)
+            {
+                throw new InvalidOperationException($"The measured work was not done: readings good {good}, recorder {log.Health.Failure ?? "well"}.");
             }
 
             var anchor = await BareExchange.RunAsync(barePort, question, Block, CancellationToken.None);

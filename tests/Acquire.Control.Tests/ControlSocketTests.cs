@@ -81,6 +81,126 @@ public sealed class ControlSocketTests : IAsyncDisposable
         Assert.Equal(0, Code(await AskAsync(raw, "{\"jsonrpc\":\"2.0\",\"id\":\"x\",\"method\":\"status\"}")));
     }
 
+    /// <summary>A late answer to hold once stood for the outcome of make safe, which had been refused.</summary>
+    [Fact]
+    public async Task LateAnswer_IsNeverTakenForTheNextCommand()
+    {
+        using var listener = new Socket(AddressFamily.Unix, SocketType.Stream, ProtocolType.Unspecified);
+        listener.Bind(new UnixDomainSocketEndPoint(_path));
+        listener.Listen(1);
+        var peer = SilentOnHoldAsync(listener);
+        var (client, problem) = await ControlClient.ConnectAsync(_path, CancellationToken.None);
+        Assert.Null(problem);
+        await using (client)
+        {
+            client!.AnswerBound = TimeSpan.FromMilliseconds(300);
+            var hold = await client.SendAsync("hold", "A. Tester", null, CancellationToken.None);
+            Assert.False(hold.Done);
+            Assert.Contains("may still be carried out", hold.Text, StringComparison.Ordinal);
+            client.AnswerBound = TimeSpan.FromSeconds(10);
+            Assert.Equal(new ControlOutcome(false, "safe refused"), await client.SendAsync("safe", "A. Tester", null, CancellationToken.None));
+        }
+
+        await peer;
+        File.Delete(_path);
+    }
+
+    /// <summary>An engine that begins its answer to hold, goes silent within the line, and ends it when asked the next thing.</summary>
+    private static async Task SilentOnHoldAsync(Socket listener)
+    {
+        using var socket = await listener.AcceptAsync();
+        using var reader = new StreamReader(new NetworkStream(socket));
+        await reader.ReadLineAsync();
+        await socket.SendAsync("{\"jsonrpc\":\"2.0\",\"id\":1,\"result\":{\"version\":1,\"runId\":\"r\"}}\n"u8.ToArray());
+        await reader.ReadLineAsync();
+        await socket.SendAsync("{\"jsonrpc\":\"2.0\",\"id\":2,\"res"u8.ToArray());
+        await reader.ReadLineAsync();
+        await socket.SendAsync("ult\":{\"done\":true,\"text\":\"held\"}}\n{\"jsonrpc\":\"2.0\",\"id\":3,\"result\":{\"done\":false,\"text\":\"safe refused\"}}\n"u8.ToArray());
+    }
+
+    [Fact]
+    public async Task Command_WithoutItsLineEnd_IsNotObeyed()
+    {
+        Serve();
+        using var raw = await RawAsync();
+        await raw.SendAsync("{\"jsonrpc\":\"2.0\",\"id\":1,\"method\":\"stop\",\"params\":{\"operator\":\"A\"}}"u8.ToArray());
+        raw.Shutdown(SocketShutdown.Send);
+        Assert.Equal(0, await raw.ReceiveAsync(new byte[1000]));
+        Assert.Equal(0, _loop.Posts);
+    }
+
+    [Fact]
+    public async Task Target_ThatThrows_GivesAnErrorAndTheConnectionLives()
+    {
+        _target.Throws = true;
+        Serve();
+        using var raw = await RawAsync();
+        Assert.Equal(-32603, Code(await AskAsync(raw, "{\"jsonrpc\":\"2.0\",\"id\":1,\"method\":\"status\"}")));
+        _target.Throws = false;
+        Assert.Equal(0, Code(await AskAsync(raw, "{\"jsonrpc\":\"2.0\",\"id\":2,\"method\":\"status\"}")));
+    }
+
+    [Fact]
+    public async Task Loop_ThatHasEnded_GivesAnErrorAndTheServerEndsQuietly()
+    {
+        _loop.Ended = true;
+        Serve();
+        using var raw = await RawAsync();
+        Assert.Equal(-32603, Code(await AskAsync(raw, "{\"jsonrpc\":\"2.0\",\"id\":1,\"method\":\"status\"}")));
+        await _server!.DisposeAsync();
+        _server = null;
+    }
+
+    [Fact]
+    public async Task SeventeenthClient_IsToldAndTheFreedPlaceIsGivenAgain()
+    {
+        Serve();
+        var sockets = new List<Socket>();
+        for (var i = 0; i < 16; i++)
+        {
+            sockets.Add(await RawAsync());
+            await AskAsync(sockets[i], "{}"); // served, not only queued
+        }
+
+        var (client, problem) = await ControlClient.ConnectAsync(_path, CancellationToken.None);
+        Assert.Null(client);
+        Assert.Contains("places for consoles are taken", problem, StringComparison.Ordinal);
+        sockets.ForEach(socket => socket.Dispose());
+        for (var wait = 0; client is null && wait < 100; wait++)
+        {
+            await Task.Delay(TimeSpan.FromMilliseconds(50), TimeProvider.System);
+            (client, _) = await ControlClient.ConnectAsync(_path, CancellationToken.None);
+        }
+
+        Assert.NotNull(client);
+        await client.DisposeAsync();
+    }
+
+    [Fact]
+    public async Task Path_ThatIsTooLong_IsRefusedByBothEnds()
+    {
+        var path = Path.Combine(Path.GetTempPath(), new string('a', 150));
+        Assert.Contains("too long", (await ControlClient.ConnectAsync(path, CancellationToken.None)).Problem, StringComparison.Ordinal);
+        Assert.Contains("XDG_RUNTIME_DIR", Assert.Throws<IOException>(() => ControlServer.Start(path, _target, _loop)).Message, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public async Task OrdinaryFile_AtTheSocketsPath_IsLeftAlone()
+    {
+        await File.WriteAllTextAsync(_path, "precious");
+        Assert.Throws<IOException>(() => ControlServer.Start(_path, _target, _loop));
+        Assert.Equal("precious", await File.ReadAllTextAsync(_path));
+        File.Delete(_path);
+    }
+
+    [Fact]
+    public async Task Line_ThatIsTooLong_IsToldSo()
+    {
+        Serve();
+        using var raw = await RawAsync();
+        Assert.Equal(-32600, Code(await AskAsync(raw, new string('x', (64 * 1024) + 1))));
+    }
+
     [Fact]
     public async Task Line_ThatIsTooLong_ClosesTheConnectionAndNothingElse()
     {
@@ -89,7 +209,10 @@ public sealed class ControlSocketTests : IAsyncDisposable
         try
         {
             await raw.SendAsync(Encoding.ASCII.GetBytes(new string('x', 200_000)));
-            Assert.Equal(0, await raw.ReceiveAsync(new byte[10]));
+            while (await raw.ReceiveAsync(new byte[1000]) > 0)
+            {
+                // The error's line; then the end.
+            }
         }
         catch (SocketException)
         {
@@ -185,7 +308,9 @@ public sealed class ControlSocketTests : IAsyncDisposable
 
     private sealed class FakeTarget : IControlTarget
     {
-        public EngineStatusMessage Status() => new("r1", "a.run", "running", "soak", 1, 2, 3, 40, 300.5, double.NaN, 310, 1234.5, 99, "drift");
+        public bool Throws { get; set; }
+
+        public EngineStatusMessage Status() => Throws ? throw new InvalidOperationException("broken") : new("r1", "a.run", "running", "soak", 1, 2, 3, 40, 300.5, double.NaN, 310, 1234.5, 99, "drift");
 
         public ControlOutcome MakeSafe(string operatorName, string? reason) => new(true, $"safe {operatorName} {reason}");
 
@@ -200,8 +325,15 @@ public sealed class ControlSocketTests : IAsyncDisposable
     {
         public int Posts { get; private set; }
 
+        public bool Ended { get; set; }
+
         public override void Post(SendOrPostCallback d, object? state)
         {
+            if (Ended)
+            {
+                throw new InvalidOperationException("the loop has ended");
+            }
+
             lock (this)
             {
                 Posts++;
